@@ -1,0 +1,139 @@
+"""What passes between devices: states, streams, exchanges, and the protocol of a device.
+
+Arrays have the shape (..., hours): hours last, and any leading axis holds variants of a scheme. A number
+or an array of shape (variants, 1) stands for all hours.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Any, Protocol, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+from estimator import moist_air
+from estimator.moist_air import Array, ArrayLike
+
+__all__ = ["After", "Device", "Exchange", "Flags", "Hours", "Request", "State", "Step", "Streams", "pick"]
+
+Flags: TypeAlias = NDArray[np.bool_]
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class State:
+    """Moist air at a point: dry bulb degC, humidity ratio kg/kg, enthalpy kJ/kg, pressure Pa."""
+
+    dry_bulb: Array
+    humidity_ratio: Array
+    enthalpy: Array
+    pressure: Array
+
+    @classmethod
+    def of(cls, dry_bulb: Array, humidity_ratio: Array, pressure: Array) -> State:
+        """The state of this dry bulb and humidity ratio."""
+        h = moist_air.enthalpy(dry_bulb, humidity_ratio, pressure)
+        return cls(dry_bulb, humidity_ratio, h, pressure)
+
+    def heated(self, heat: ArrayLike) -> State:
+        """The state after ``heat``, kJ per kg dry air, at the same humidity ratio."""
+        h = self.enthalpy + heat
+        t = moist_air.dry_bulb_from_enthalpy(h, self.humidity_ratio, self.pressure)
+        return State(t, self.humidity_ratio, h, self.pressure)
+
+    def heat_to(self, dry_bulb: ArrayLike) -> Array:
+        """Heat, kJ per kg dry air, that brings the air to ``dry_bulb`` (negative: cooling without water)."""
+        return moist_air.enthalpy(dry_bulb, self.humidity_ratio, self.pressure) - self.enthalpy
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Streams:
+    """The two airstreams at one place; ``exhaust`` is None where a scheme has no exhaust air."""
+
+    supply: State
+    exhaust: State | None = None
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Hours:
+    """What every device may know of the hours: calendar, outdoor air, and the flow through the unit."""
+
+    month: NDArray[np.int64]
+    hour: NDArray[np.int64]
+    weekday: NDArray[np.int64]
+    outdoor: State
+    #: kg dry air/s; 0 where the unit is off
+    mass_flow: Array
+
+    @property
+    def running(self) -> Flags:
+        """Hours in which the unit runs."""
+        return np.asarray(self.mass_flow > 0.0)
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Request:
+    """What the supply is asked for in each hour; dry bulbs are None where nothing is asked."""
+
+    dew_point: ArrayLike
+    humidity_ratio: Array
+    low: ArrayLike | None
+    high: ArrayLike | None
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Exchange:
+    """What one device moves: heat, water and power, and the pressure drops it puts in the way of the air.
+
+    ``heat`` is in kW into the supply air (negative: cooling); ``water`` in kg/s leaves the supply air as
+    liquid or ice, carrying ``water_enthalpy`` kJ/kg; ``power`` is the electricity the device draws, kW.
+    The exhaust side's counterparts are positive into the exhaust air.
+    """
+
+    device: str
+    heat: Array
+    water: Array | None = None
+    water_enthalpy: Array | None = None
+    power: Array | None = None
+    pressure_drop: ArrayLike = 0.0
+    exhaust_heat: Array | None = None
+    exhaust_water: Array | None = None
+    exhaust_pressure_drop: ArrayLike = 0.0
+    #: named marks of single hours, such as "frozen"
+    flags: Mapping[str, Flags] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Step:
+    """What a device returns: the streams that leave it and what it exchanged."""
+
+    leaving: Streams
+    exchange: Exchange
+
+
+#: What the passive devices downstream make of a state that leaves the coil. The second argument picks
+#: the hours (and variants) in question out of arrays of the full shape.
+After: TypeAlias = Callable[[State, Callable[[Any], Any]], State]
+
+
+class Device(Protocol):
+    """A device: frozen settings, and a pure function of what enters it."""
+
+    def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
+        """The streams that leave, and the exchange."""
+        ...
+
+
+def pick(index: NDArray[np.intp], shape: tuple[int, ...]) -> Callable[[Any], Any]:
+    """A function that takes the elements at flat ``index`` out of anything that broadcasts to ``shape``.
+
+    A plain number stays a plain number.
+    """
+
+    def take(value: Any) -> Any:
+        if np.ndim(value) == 0:
+            return value
+        return np.broadcast_to(value, shape).reshape(-1)[index]
+
+    return take

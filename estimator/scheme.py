@@ -1,0 +1,211 @@
+"""A scheme: one configured way of treating the air, as frozen settings."""
+
+from __future__ import annotations
+
+import dataclasses
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
+from typing import Any, Literal
+
+import numpy as np
+
+from estimator.airstream.airflow import Airflow, ScheduleRule
+from estimator.airstream.coil import Coil
+from estimator.airstream.fan import Fan
+from estimator.airstream.heat import Preheat, ReheatSource
+from estimator.airstream.order import Unit
+from estimator.airstream.supply import Supply
+from estimator.errors import SchemeError
+from estimator.files import canonical_json, sha256
+from estimator.plant import Plant
+from estimator.settings import Setpoint, Setting, Settings, setting, settings_of
+
+__all__ = ["Carbon", "Leaf", "Origin", "Prices", "Scheme", "Source", "leaves", "resolved_sha256", "stack"]
+
+Origin = Literal["file", "default", "command"]
+
+
+@dataclass(frozen=True, kw_only=True)
+class Prices(Settings):
+    """Flat prices of bought energy, in any currency; absent: cost is not stated."""
+
+    currency: str = setting(default="", doc="a label, shown beside costs", example='"EUR"')
+    electricity: float | None = setting(
+        "price", default=None, doc="price of electricity", example="0.18 /kWh"
+    )
+    fuel: float | None = setting("price", default=None, doc="price of fuel", example="0.07 /kWh")
+    heat: float | None = setting("price", default=None, doc="price of district heat", example="0.09 /kWh")
+
+
+@dataclass(frozen=True, kw_only=True)
+class Carbon(Settings):
+    """Flat carbon factors of bought energy, CO2 equivalent; absent: carbon is not stated."""
+
+    electricity: float | None = setting(
+        "carbon factor", default=None, doc="carbon factor of electricity", example="0.35 kg/kWh"
+    )
+    fuel: float | None = setting(
+        "carbon factor", default=None, doc="carbon factor of fuel", example="0.20 kg/kWh"
+    )
+    heat: float | None = setting(
+        "carbon factor", default=None, doc="carbon factor of district heat", example="0.15 kg/kWh"
+    )
+
+
+@dataclass(frozen=True, kw_only=True)
+class Source:
+    """Where a scheme came from: file, its hash, and the origin of every setting by path."""
+
+    file: str = ""
+    file_sha256: str | None = None
+    origins: Mapping[str, Origin] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, kw_only=True)
+class Scheme:
+    """One configured way of treating the air.
+
+    Every number is in the SI unit of its quantity. A section that is None is a device that is absent.
+    """
+
+    name: str
+    airflow: Airflow
+    supply: Supply
+    coil: Coil = field(default_factory=Coil)
+    fan: Fan | None = None
+    preheat: Preheat | None = None
+    reheat: tuple[ReheatSource, ...] = ()
+    plant: Plant = field(default_factory=Plant)
+    prices: Prices = field(default_factory=Prices)
+    carbon: Carbon = field(default_factory=Carbon)
+    source: Source = field(default_factory=Source, compare=False)
+
+    def __post_init__(self) -> None:
+        names = [source.source for source in self.reheat]
+        for name in names:
+            if names.count(name) > 1:
+                raise SchemeError(
+                    f"reheat source {name!r} stands twice", where="reheat", allowed="each source once"
+                )
+
+    @property
+    def unit(self) -> Unit:
+        """The sections that stand in the airstream."""
+        return Unit(
+            airflow=self.airflow,
+            supply=self.supply,
+            coil=self.coil,
+            fan=self.fan,
+            preheat=self.preheat,
+            reheat=self.reheat,
+        )
+
+
+@dataclass(frozen=True, kw_only=True)
+class Leaf:
+    """One setting of a scheme by its path, with its value in SI."""
+
+    path: str
+    setting: Setting
+    value: Any
+    origin: Origin
+
+
+def sections(scheme: Scheme) -> Iterator[tuple[str, Any]]:
+    """The sections that a scheme has, by path; reheat sources are addressed by name."""
+    for name in ("airflow", "supply", "coil", "fan", "preheat"):
+        section = getattr(scheme, name)
+        if section is not None:
+            yield name, section
+        if name == "airflow":
+            for number, rule in enumerate(scheme.airflow.schedule, 1):
+                yield f"airflow.schedule.{number}", rule
+    for source in scheme.reheat:
+        yield f"reheat.{source.source}", source
+    for name in ("plant", "prices", "carbon"):
+        yield name, getattr(scheme, name)
+
+
+#: Fields of the model that a file and a command address by another path.
+PATHS: Mapping[str, str] = {"supply.low": "supply.dry_bulb.low", "supply.high": "supply.dry_bulb.high"}
+
+
+def leaves(scheme: Scheme) -> Iterator[Leaf]:
+    """Every setting of a scheme, in the order of the file."""
+    for section_path, section in sections(scheme):
+        if isinstance(section, ScheduleRule):
+            yield from _rule_leaves(scheme, section_path, section)
+        for name, known in settings_of(type(section)):
+            path = f"{section_path}.{name}"
+            path = PATHS.get(path, path)
+            origin = scheme.source.origins.get(path, "default")
+            yield Leaf(path=path, setting=known, value=getattr(section, name), origin=origin)
+
+
+def _rule_leaves(scheme: Scheme, path: str, rule: ScheduleRule) -> Iterator[Leaf]:
+    for name in ("days", "hours", "months"):
+        origin = scheme.source.origins.get(f"{path}.{name}", "default")
+        known = Setting(doc=f"{name} in which the rule applies")
+        yield Leaf(path=f"{path}.{name}", setting=known, value=getattr(rule, name), origin=origin)
+
+
+def plain(value: Any) -> Any:
+    """A setting's value in the terms of JSON."""
+    if isinstance(value, Setpoint):
+        if value.outdoor:
+            return {"outdoor": list(value.outdoor), "value": list(value.values)}
+        return value.values[0] if len(value.values) == 1 else list(value.values)
+    return list(value) if isinstance(value, tuple) else value
+
+
+def resolved_sha256(scheme: Scheme) -> str:
+    """Hash of what the scheme means: every setting in SI, however it was written and wherever it stood.
+
+    The name is not part of it, nor is the origin of a setting.
+    """
+    return sha256(canonical_json({leaf.path: plain(leaf.value) for leaf in leaves(scheme)}))
+
+
+def stack(schemes: Sequence[Scheme]) -> Scheme:
+    """One scheme whose differing numbers are arrays of shape (variants, 1): the leading axis of a run.
+
+    Raises
+    ------
+    SchemeError
+        The schemes differ in more than numbers: in their devices, words or kinds of setpoint.
+    """
+    if not schemes:
+        raise SchemeError("no scheme to stack", allowed="at least one")
+    sources = {f.name: getattr(schemes[0], f.name) for f in dataclasses.fields(Scheme)}
+    for name in sources:
+        if name in ("name", "source"):
+            continue
+        sources[name] = _stacked(name, [getattr(scheme, name) for scheme in schemes])
+    return Scheme(**sources)
+
+
+def _stacked(path: str, values: list[Any]) -> Any:
+    first = values[0]
+    if all(_same(value, first) for value in values):
+        return first
+    if all(isinstance(value, int | float) and not isinstance(value, bool) for value in values):
+        return np.array(values, dtype=float)[:, None]
+    same_kind = all(type(value) is type(first) for value in values)
+    if same_kind and dataclasses.is_dataclass(first):
+        parts = {
+            f.name: _stacked(f"{path}.{f.name}", [getattr(value, f.name) for value in values])
+            for f in dataclasses.fields(first)
+        }
+        kind: Any = type(first)
+        return kind(**parts)
+    if same_kind and isinstance(first, tuple) and len({len(value) for value in values}) == 1:
+        return tuple(
+            _stacked(f"{path}.{i}", list(items)) for i, items in enumerate(zip(*values, strict=True), 1)
+        )
+    raise SchemeError(
+        "the schemes differ in more than a number", where=path, allowed="schemes of one shape in a stack"
+    )
+
+
+def _same(value: Any, other: Any) -> bool:
+    return type(value) is type(other) and bool(value == other)

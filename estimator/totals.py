@@ -1,0 +1,342 @@
+"""Totals: sums and peaks of a year over the whole, its seasons and its months.
+
+Months are summed from hours, and seasons and the year from months, so that the parts add up to the whole
+to the last digit.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from typing import Any, Final
+
+import numpy as np
+from numpy.typing import NDArray
+
+from estimator.errors import InputError
+from estimator.moist_air import Array
+from estimator.plant import CARRIERS, PURPOSES
+from estimator.scheme_file import names_to_months
+from estimator.year import Mode, Year
+
+__all__ = [
+    "EnergyRow",
+    "Peaks",
+    "PeriodTotals",
+    "SeasonMap",
+    "Totals",
+    "check_seasons",
+    "monthly",
+    "parse_seasons",
+    "seasons_by_latitude",
+    "totals",
+]
+
+#: Name of each season and the months in it, 1 to 12; together they hold every month once.
+SeasonMap = Mapping[str, tuple[int, ...]]
+
+_MONTHS: Final = 12
+
+
+@dataclass(frozen=True, kw_only=True)
+class Peaks:
+    """Highest hourly values of a period, and the hour of each; None where the peak is 0.
+
+    Where several hours share a peak the first counts.
+    """
+
+    coil_cooling_kw: float
+    coil_cooling_at: str | None
+    reheat_kw: float
+    reheat_at: str | None
+    condensate_kg_per_h: float
+    condensate_at: str | None
+
+
+@dataclass(frozen=True, kw_only=True)
+class PeriodTotals:
+    """Sums over a period, kWh, kg and hours; None where a scheme does not determine one fully."""
+
+    coil_cooling_kwh: float
+    coil_sensible_kwh: float
+    coil_latent_kwh: float
+    reheat_kwh: float
+    reheat_recovered_kwh: float
+    reheat_solar_kwh: float
+    reheat_purchased_kwh: float
+    cooling_undone_kwh: float
+    cooling_undone_by_fan_kwh: float
+    cooling_undone_by_purchased_kwh: float
+    outdoor_air_heating_kwh: float
+    preheat_kwh: float
+    condensate_kg: float
+    condensate_frozen_kg: float
+    fan_kwh: float
+    electricity_kwh: float | None
+    fuel_kwh: float | None
+    heat_kwh: float | None
+    moisture_removed_per_kwh_kg: float | None
+    hours_operating: int
+    hours_drying: int
+    hours_reheat: int
+    hours_frozen: int
+    hours_unmet: int
+    hours_unmet_dew_point: int
+    hours_unmet_warm: int
+    hours_unmet_cold: int
+    hours_by_mode: Mapping[str, int]
+    peaks: Peaks
+
+
+@dataclass(frozen=True, kw_only=True)
+class EnergyRow:
+    """Bought energy of one carrier for one purpose over the year, kWh; None where not determined."""
+
+    carrier: str
+    purpose: str
+    kwh: float | None
+    #: the same by month, January first
+    monthly_kwh: tuple[float, ...] | None
+
+
+@dataclass(frozen=True, kw_only=True)
+class Totals:
+    """Everything that is summed from one year."""
+
+    annual: PeriodTotals
+    seasons: Mapping[str, PeriodTotals]
+    season_months: SeasonMap
+    months: tuple[PeriodTotals, ...]
+    energy: tuple[EnergyRow, ...]
+    heat_residual_max: float
+    water_residual_max: float
+
+
+def seasons_by_latitude(latitude: float | None) -> SeasonMap:
+    """Three-month quarters, named by the hemisphere; plain quarters near the equator or without a latitude.
+
+    Quarters begin in December, as meteorological seasons do (common practice); within 10 degrees of the
+    equator, or where the latitude is not known, in January.
+    """
+    if latitude is None or abs(latitude) < 10.0:
+        return {f"quarter {q + 1}": tuple(range(3 * q + 1, 3 * q + 4)) for q in range(4)}
+    names = ("winter", "spring", "summer", "autumn")
+    if latitude < 0.0:
+        names = ("summer", "autumn", "winter", "spring")
+    return dict(zip(names, ((12, 1, 2), (3, 4, 5), (6, 7, 8), (9, 10, 11)), strict=True))
+
+
+def check_seasons(seasons: SeasonMap) -> None:
+    """Refuse seasons that leave out a month or count one twice.
+
+    Raises
+    ------
+    InputError
+        Names the months.
+    """
+    held = [month for months in seasons.values() for month in months]
+    missing = sorted(set(range(1, 13)) - set(held))
+    double = sorted({month for month in held if held.count(month) > 1})
+    if missing or double:
+        fault = " and ".join(
+            f"month{'s' if len(months) > 1 else ''} {', '.join(map(str, months))} {verb}"
+            for months, verb in ((missing, "left out"), (double, "counted twice"))
+            if months
+        )
+        raise InputError(fault, where="seasons", allowed="every month in one season")
+
+
+def _by_month(starts: NDArray[np.int64], values: Any) -> Array:
+    return np.asarray(np.add.reduceat(values, starts, axis=-1))
+
+
+def _starts(month: NDArray[np.int64]) -> NDArray[np.int64]:
+    starts = np.flatnonzero(np.diff(month, prepend=0))
+    if not np.array_equal(month[starts], np.arange(1, _MONTHS + 1)):
+        raise InputError("the hours do not run from January to December", where="weather")
+    return starts
+
+
+def monthly(year: Year) -> dict[str, Array]:
+    """Sums of every month, shape (..., 12), by the names of ``PeriodTotals`` (and carriers, see below).
+
+    Leading axes are kept, so this serves a stack of variants too.
+    """
+    starts = _starts(year.hours.month)
+    undone = year.cooling_undone_by
+    zero = np.zeros(1)
+    unmet = year.unmet
+    powers: dict[str, Any] = {
+        "coil_cooling_kwh": year.coil_cooling,
+        "coil_sensible_kwh": year.coil_sensible,
+        "reheat_kwh": year.reheat,
+        "cooling_undone_by_fan_kwh": undone.get("fan", zero),
+        "cooling_undone_by_purchased_kwh": undone.get("purchased", zero),
+        "outdoor_air_heating_kwh": year.outdoor_air_heating,
+        "preheat_kwh": year.preheat,
+        "condensate_kg": year.condensate,
+        "condensate_frozen_kg": np.where(year.frozen, year.condensate, 0.0),
+        "fan_kwh": year.fan_power,
+    }
+    flags: dict[str, Any] = {
+        "hours_operating": year.hours.running,
+        "hours_drying": year.drying,
+        "hours_reheat": year.reheat > 0.0,
+        "hours_frozen": year.frozen,
+        "hours_unmet": unmet["dew_point"] | unmet["warm"] | unmet["cold"],
+        "hours_unmet_dew_point": unmet["dew_point"],
+        "hours_unmet_warm": unmet["warm"],
+        "hours_unmet_cold": unmet["cold"],
+    }
+    shape = year.coil_cooling.shape
+    sums = {name: _by_month(starts, _full(value, shape)) for name, value in powers.items()}
+    for name, flag in flags.items():
+        sums[name] = _by_month(starts, _full(flag, shape).astype(np.int64))
+    for mode in Mode:
+        sums[f"mode {mode.words}"] = _by_month(starts, (year.mode == mode).astype(np.int64))
+    return sums
+
+
+def _full(value: Any, shape: tuple[int, ...]) -> Any:
+    return value if np.shape(value) == shape else np.broadcast_to(value, shape)
+
+
+def _energy(year: Year, starts: NDArray[np.int64]) -> tuple[EnergyRow, ...]:
+    found = {(e.carrier, e.purpose): e.power for e in year.energy}
+    rows = []
+    for carrier in CARRIERS:
+        for purpose in PURPOSES:
+            if (carrier, purpose) not in found:
+                continue
+            power = found[carrier, purpose]
+            months = None if power is None else tuple(_by_month(starts, power).tolist())
+            rows.append(
+                EnergyRow(
+                    carrier=carrier,
+                    purpose=purpose,
+                    kwh=None if months is None else float(np.sum(months)),
+                    monthly_kwh=months,
+                )
+            )
+    return tuple(rows)
+
+
+def _carrier_sum(rows: tuple[EnergyRow, ...], carrier: str, months: list[int]) -> float | None:
+    total = 0.0
+    for row in rows:
+        if row.carrier == carrier:
+            if row.monthly_kwh is None:
+                return None
+            total += float(np.sum([row.monthly_kwh[m] for m in months]))
+    return total
+
+
+def _peaks(
+    year: Year, starts: NDArray[np.int64], ends: NDArray[np.int64]
+) -> list[dict[str, tuple[float, int]]]:
+    series = {"coil_cooling": year.coil_cooling, "reheat": year.reheat, "condensate": year.condensate}
+    months = []
+    for start, end in zip(starts, ends, strict=True):
+        at = {name: int(start + np.argmax(values[start:end])) for name, values in series.items()}
+        months.append({name: (float(series[name][i]), i) for name, i in at.items()})
+    return months
+
+
+def _peak(year: Year, months: list[dict[str, tuple[float, int]]]) -> Peaks:
+    label = year.weather.label if year.weather is not None else str
+    units = {"coil_cooling": "coil_cooling_kw", "reheat": "reheat_kw", "condensate": "condensate_kg_per_h"}
+    fields: dict[str, Any] = {}
+    for name, key in units.items():
+        value, index = max((month[name] for month in months), key=lambda peak: (peak[0], -peak[1]))
+        fields[key] = value
+        fields[f"{name}_at"] = label(index) if value > 0.0 else None
+    return Peaks(**fields)
+
+
+def totals(year: Year, seasons: SeasonMap | None = None) -> Totals:
+    """Sum one year (no leading axis) over the whole, its seasons and its months.
+
+    Parameters
+    ----------
+    year
+        The result of ``run_year`` for one scheme.
+    seasons
+        Seasons of one's own, each month in one of them; quarters by hemisphere when left out.
+
+    Raises
+    ------
+    InputError
+        A month is in no season or in two, or the year is a stack of variants.
+    """
+    if year.coil_cooling.ndim != 1:
+        raise InputError("a stack of variants", where="totals", allowed="one year; see year.variant")
+    if seasons is None:
+        seasons = seasons_by_latitude(year.weather.latitude if year.weather is not None else None)
+    check_seasons(seasons)
+    starts = _starts(year.hours.month)
+    ends = np.append(starts[1:], year.hours.month.size)
+    sums = {name: values.tolist() for name, values in monthly(year).items()}
+    rows = _energy(year, starts)
+    peaks = _peaks(year, starts, ends)
+
+    def period(months: tuple[int, ...]) -> PeriodTotals:
+        index = [month - 1 for month in sorted(months)]
+        return _period(sums, rows, _peak(year, [peaks[i] for i in index]), index)
+
+    return Totals(
+        annual=period(tuple(range(1, _MONTHS + 1))),
+        seasons={name: period(months) for name, months in seasons.items()},
+        season_months=dict(seasons),
+        months=tuple(period((month,)) for month in range(1, _MONTHS + 1)),
+        energy=rows,
+        heat_residual_max=float(year.heat_residual.max(initial=0.0)),
+        water_residual_max=float(year.water_residual.max(initial=0.0)),
+    )
+
+
+def _period(
+    sums: dict[str, list[Any]], rows: tuple[EnergyRow, ...], peaks: Peaks, months: list[int]
+) -> PeriodTotals:
+    total = {name: sum(values[m] for m in months) for name, values in sums.items()}
+    modes = {mode.words: total.pop(f"mode {mode.words}") for mode in Mode}
+    carriers = {carrier: _carrier_sum(rows, carrier, months) for carrier in CARRIERS}
+    cooling = [row for row in rows if row.purpose == "cooling"]
+    spent = sum(
+        float(np.sum([row.monthly_kwh[m] for m in months])) for row in cooling if row.monthly_kwh is not None
+    )
+    removed = total["condensate_kg"] / spent if spent > 0.0 else None
+    undone = total["cooling_undone_by_fan_kwh"] + total["cooling_undone_by_purchased_kwh"]
+    return PeriodTotals(
+        **total,
+        coil_latent_kwh=total["coil_cooling_kwh"] - total["coil_sensible_kwh"],
+        reheat_recovered_kwh=0.0,
+        reheat_solar_kwh=0.0,
+        reheat_purchased_kwh=total["reheat_kwh"],
+        cooling_undone_kwh=undone,
+        electricity_kwh=carriers["electricity"],
+        fuel_kwh=carriers["fuel"],
+        heat_kwh=carriers["heat"],
+        moisture_removed_per_kwh_kg=removed,
+        hours_by_mode=modes,
+        peaks=peaks,
+    )
+
+
+def parse_seasons(text: str) -> SeasonMap:
+    """Seasons written as ``"wet=may..oct, dry=nov..apr"``; parts of a season are joined by ``+``.
+
+    Raises
+    ------
+    InputError
+        What cannot be read, or a month left out or counted twice.
+    """
+    seasons: dict[str, tuple[int, ...]] = {}
+    for part in text.split(","):
+        name, equals, months = (piece.strip() for piece in part.partition("="))
+        if not equals or not name or not months:
+            raise InputError(
+                f"{part.strip()!r} is not a season", where="seasons", allowed="'wet=may..oct, dry=nov..apr'"
+            )
+        seasons[name] = names_to_months(months.split("+"))
+    check_seasons(seasons)
+    return seasons

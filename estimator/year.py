@@ -1,0 +1,384 @@
+"""One scheme through one weather year: the hourly ledger.
+
+``run_year`` is the whole of the physics: it opens no file and knows nothing of prices or display. What
+the year keeps is what cannot be derived, the state at every point and the exchanges between them;
+everything else is worked out when it is asked for.
+"""
+
+from __future__ import annotations
+
+import dataclasses
+from dataclasses import dataclass
+from enum import IntEnum
+from functools import cached_property
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from estimator import moist_air
+from estimator.airstream.airflow import mass_flow
+from estimator.airstream.coil import apparatus_dew_point
+from estimator.airstream.order import Airstream, pass_air
+from estimator.airstream.state import Exchange, Flags, Hours, State
+from estimator.constants import BALANCE_TOLERANCE, SECONDS_PER_HOUR, UNMET_TOLERANCE
+from estimator.errors import BalanceError
+from estimator.moist_air import Array
+from estimator.plant import bought
+from estimator.scheme import Scheme
+
+if TYPE_CHECKING:
+    from estimator.weather.model import WeatherYear
+
+__all__ = ["Energy", "Mode", "Year", "run_hours", "run_year"]
+
+
+class Mode(IntEnum):
+    """What the unit does in an hour."""
+
+    OFF = 0
+    UNTREATED = 1
+    HEATING = 2
+    SENSIBLE_COOLING = 3
+    DRYING = 4
+    DRYING_WITH_REHEAT = 5
+
+    @property
+    def words(self) -> str:
+        """The mode as it is shown."""
+        return self.name.lower().replace("_", " ")
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Energy:
+    """Bought energy of one carrier for one purpose: hourly kW, None where a scheme does not determine it."""
+
+    carrier: str
+    purpose: str
+    power: Array | None
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Year:
+    """The hourly ledger of one scheme (or a stack of variants) in one weather year.
+
+    Arrays have the shape (..., hours). Powers are in kW, water in kg/h; each holds for its whole hour, so a
+    sum over hours is in kWh or kg.
+    """
+
+    scheme: Scheme
+    airstream: Airstream
+    weather: WeatherYear | None = None
+
+    @property
+    def hours(self) -> Hours:
+        """Calendar, outdoor air and flow of every hour."""
+        return self.airstream.hours
+
+    @property
+    def mass_flow(self) -> Array:
+        """Dry air through the unit, kg/s."""
+        return self.hours.mass_flow
+
+    @property
+    def supply(self) -> State:
+        """The air as it leaves the unit."""
+        return self.airstream.points["supply"]
+
+    def exchange(self, device: str) -> Exchange | None:
+        """The exchange of one device, None where the scheme has no such device."""
+        for passage in self.airstream.passages:
+            if passage.exchange.device == device:
+                return passage.exchange
+        return None
+
+    @cached_property
+    def _coil(self) -> tuple[State, State, Exchange]:
+        for passage in self.airstream.passages:
+            if passage.exchange.device == "coil":
+                points = self.airstream.points
+                return points[passage.entering], points[passage.leaving], passage.exchange
+        raise BalanceError("an airstream without a coil")
+
+    @cached_property
+    def coil_cooling(self) -> Array:
+        """Heat that the coil takes from the air, kW."""
+        return -self._coil[2].heat
+
+    @cached_property
+    def coil_sensible(self) -> Array:
+        """Coil cooling of the dry bulb at the leaving humidity ratio, kW; the rest is latent."""
+        before, after, _ = self._coil
+        at_entering = moist_air.enthalpy(before.dry_bulb, after.humidity_ratio, before.pressure)
+        return np.where(self.coil_cooling != 0.0, self.mass_flow * (at_entering - after.enthalpy), 0.0)
+
+    @cached_property
+    def coil_latent(self) -> Array:
+        """Coil cooling less its sensible part, kW."""
+        return self.coil_cooling - self.coil_sensible
+
+    @cached_property
+    def condensate(self) -> Array:
+        """Water that leaves as liquid or ice, kg/h."""
+        water = self._coil[2].water
+        assert water is not None
+        return water * SECONDS_PER_HOUR
+
+    @cached_property
+    def drying(self) -> Flags:
+        """Hours in which the coil removes water."""
+        return np.asarray(self.condensate > 0.0)
+
+    @cached_property
+    def cooling(self) -> Flags:
+        """Hours in which the coil runs, wet or dry."""
+        return np.asarray(self.coil_cooling > 0.0) | self.drying
+
+    @cached_property
+    def active_heat(self) -> Array:
+        """Heat of all sources after the coil, kW."""
+        return self._sum("reheat.")
+
+    @cached_property
+    def preheat(self) -> Array:
+        """Heat of the preheat, kW."""
+        return self._sum("preheat")
+
+    def _sum(self, prefix: str) -> Array:
+        parts = [p.exchange.heat for p in self.airstream.passages if p.exchange.device.startswith(prefix)]
+        return np.asarray(sum(parts)) if parts else np.zeros_like(self.coil_cooling)
+
+    @cached_property
+    def reheat(self) -> Array:
+        """Active heat in hours in which the coil dries, kW."""
+        return np.where(self.drying, self.active_heat, 0.0)
+
+    @cached_property
+    def outdoor_air_heating(self) -> Array:
+        """Heat added, preheat included, in hours in which the coil does not run, kW."""
+        return np.where(self.cooling, 0.0, self.active_heat + self.preheat)
+
+    @cached_property
+    def fan_power(self) -> Array:
+        """Electricity of the fan, kW."""
+        fan = self.exchange("fan")
+        if fan is None or fan.power is None:
+            return np.zeros_like(self.coil_cooling)
+        return fan.power
+
+    @cached_property
+    def cooling_undone_by(self) -> dict[str, Array]:
+        """Cooling undone, kW, by what supplied the heat: ``fan`` and the active sources' class.
+
+        The air is brought back from the coil's leaving dry bulb up to at most the outdoor dry bulb. Each
+        device behind the coil gets the part of that stretch over which it heats, in the air's order.
+        """
+        _, behind, _ = self._coil
+        names = list(self.airstream.points)
+        coil_point = next(p.leaving for p in self.airstream.passages if p.exchange.device == "coil")
+        outdoor = self.airstream.points["outdoor"].dry_bulb
+        w, p = behind.humidity_ratio, behind.pressure
+        ceiling = np.maximum(moist_air.enthalpy(outdoor, w, p), behind.enthalpy)
+        parts: dict[str, Array] = {}
+        for passage in self.airstream.passages:
+            if names.index(passage.leaving) <= names.index(coil_point):
+                continue
+            before, after = (self.airstream.points[n].enthalpy for n in (passage.entering, passage.leaving))
+            share = np.minimum(after, ceiling) - np.minimum(before, ceiling)
+            kind = "fan" if passage.exchange.device == "fan" else "purchased"
+            heat = np.where(self.cooling, self.mass_flow * np.maximum(share, 0.0), 0.0)
+            parts[kind] = parts[kind] + heat if kind in parts else heat
+        return parts
+
+    @cached_property
+    def cooling_undone(self) -> Array:
+        """Heat that only brings the air back up to at most its outdoor dry bulb, kW."""
+        parts = list(self.cooling_undone_by.values())
+        return np.asarray(sum(parts)) if parts else np.zeros_like(self.coil_cooling)
+
+    @cached_property
+    def mode(self) -> NDArray[np.int64]:
+        """The hour's mode, a ``Mode``."""
+        heated = self.active_heat + self.preheat > 0.0
+        kinds = [~self.hours.running, self.drying & (self.reheat > 0.0), self.drying, self.cooling, heated]
+        names = [Mode.OFF, Mode.DRYING_WITH_REHEAT, Mode.DRYING, Mode.SENSIBLE_COOLING, Mode.HEATING]
+        return np.select(kinds, [int(n) for n in names], int(Mode.UNTREATED))
+
+    @cached_property
+    def unmet(self) -> dict[str, Flags]:
+        """Operating hours off target by more than 0.1 K: ``dew_point``, ``warm``, ``cold``."""
+        wanted, supply, running = self.airstream.request, self.supply, self.hours.running
+        worst = moist_air.saturation_humidity_ratio(
+            np.asarray(wanted.dew_point) + UNMET_TOLERANCE, supply.pressure
+        )
+        none = np.zeros(self.coil_cooling.shape, dtype=bool)
+        high, low = wanted.high, wanted.low
+        t = supply.dry_bulb
+        return {
+            "dew_point": running & (supply.humidity_ratio > worst),
+            "warm": none if high is None else running & (t > high + UNMET_TOLERANCE),
+            "cold": none if low is None else running & (t < low - UNMET_TOLERANCE),
+        }
+
+    @cached_property
+    def frozen(self) -> Flags:
+        """Hours in which the condensate leaves as ice."""
+        return self._coil[2].flags["frozen"]
+
+    @property
+    def coil_flags(self) -> dict[str, Flags]:
+        """The coil's marks of single hours."""
+        return dict(self._coil[2].flags)
+
+    def apparatus_dew_point(self) -> Array:
+        """Apparatus dew point of the coil, degC, NaN where it removes no water."""
+        before, after, _ = self._coil
+        return apparatus_dew_point(before, after, self.scheme.coil.bypass_factor)
+
+    @cached_property
+    def energy(self) -> tuple[Energy, ...]:
+        """Bought energy by carrier and purpose."""
+        from estimator.airstream.heat import CARRIER_OF
+
+        rows: dict[tuple[str, str], Array | None] = {}
+
+        def add(carrier: str, purpose: str, power: Array | None) -> None:
+            known = rows.get((carrier, purpose), 0.0)
+            rows[carrier, purpose] = None if power is None or known is None else known + power
+
+        add("electricity", "cooling", bought(self.coil_cooling, self.scheme.plant.cooling_cop))
+        for source in self.scheme.reheat:
+            given = self.exchange(f"reheat.{source.source}")
+            assert given is not None
+            used = bought(given.heat, source.efficiency)
+            add(CARRIER_OF[source.source], "reheat", np.where(self.drying, used, 0.0))
+            add(CARRIER_OF[source.source], "outdoor-air heating", np.where(self.drying, 0.0, used))
+        if self.scheme.preheat is not None:
+            preheat = self.scheme.preheat
+            add(CARRIER_OF[preheat.source], "preheat", bought(self.preheat, preheat.efficiency))
+        if self.scheme.fan is not None:
+            add("electricity", "fans", self.fan_power)
+        return tuple(
+            Energy(carrier=carrier, purpose=purpose, power=power)
+            for (carrier, purpose), power in rows.items()
+        )
+
+    @cached_property
+    def heat_residual(self) -> Array:
+        """Largest heat imbalance of any device and of the whole, as a share of the enthalpy passing."""
+        return self._residuals[0]
+
+    @cached_property
+    def water_residual(self) -> Array:
+        """Largest water imbalance of any device and of the whole, as a share of the water passing."""
+        return self._residuals[1]
+
+    @cached_property
+    def _residuals(self) -> tuple[Array, Array]:
+        return _balance(self.airstream)
+
+
+def _balance(airstream: Airstream) -> tuple[Array, Array]:
+    """Residuals of heat and water, with every enthalpy worked out anew from dry bulb and humidity ratio."""
+    m = airstream.hours.mass_flow
+    points = airstream.points
+    enthalpy = {n: moist_air.enthalpy(s.dry_bulb, s.humidity_ratio, s.pressure) for n, s in points.items()}
+    heat_scale = m * np.maximum(np.maximum.reduce([np.abs(h) for h in enthalpy.values()]), 1.0)
+    water_scale = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
+    whole_heat: Any = m * (enthalpy["supply"] - enthalpy["outdoor"])
+    whole_water: Any = m * (points["supply"].humidity_ratio - points["outdoor"].humidity_ratio)
+    heat_worst: Any = 0.0
+    water_worst: Any = 0.0
+    for passage in airstream.passages:
+        exchange = passage.exchange
+        gained = m * (enthalpy[passage.leaving] - enthalpy[passage.entering]) - exchange.heat
+        whole_heat = whole_heat - exchange.heat
+        water: Any = 0.0
+        if exchange.water is not None and exchange.water_enthalpy is not None:
+            water = exchange.water
+            carried = exchange.water * exchange.water_enthalpy
+            gained, whole_heat, whole_water = gained + carried, whole_heat + carried, whole_water + water
+        w_in, w_out = (points[n].humidity_ratio for n in (passage.entering, passage.leaving))
+        heat_worst = np.maximum(heat_worst, np.abs(gained))
+        if w_in is not w_out:
+            water_worst = np.maximum(water_worst, np.abs(m * (w_out - w_in) + water))
+    heat = np.maximum(heat_worst, np.abs(whole_heat)) / np.where(m > 0.0, heat_scale, 1.0)
+    water_share = np.maximum(water_worst, np.abs(whole_water)) / np.where(m > 0.0, water_scale, 1.0)
+    return heat, water_share
+
+
+def run_hours(scheme: Scheme, hours: Hours, weather: WeatherYear | None = None) -> Year:
+    """Take any set of hours through a scheme and check that heat and water balance in every one.
+
+    Raises
+    ------
+    BalanceError
+        A residual exceeds 1e-9 of what passes through.
+    """
+    year = Year(scheme=scheme, airstream=pass_air(scheme.unit, hours), weather=weather)
+    for name, residual in (("heat", year.heat_residual), ("water", year.water_residual)):
+        worst = float(residual.max(initial=0.0))
+        if not worst <= BALANCE_TOLERANCE:
+            index = int(np.argmax(residual) % residual.shape[-1])
+            place = weather.label(index) if weather is not None else f"hour {index}"
+            raise BalanceError(f"{name} does not balance at {place}: {worst:.2g} of what passes through")
+    return year
+
+
+def run_year(weather: WeatherYear, scheme: Scheme) -> Year:
+    """Take every hour of a weather year through a scheme.
+
+    Parameters
+    ----------
+    weather
+        A year as ``read_weather`` gives it; arrays of shape (hours,).
+    scheme
+        A scheme, or a stack of variants (``scheme.stack``); arrays of the result then have the shape
+        (variants, hours), and a variant's figures are the same as if it had run alone.
+
+    Raises
+    ------
+    ConvergenceError, BalanceError
+        The arithmetic did not hold; a defect of this program, not of the input.
+    """
+    outdoor = State.of(weather.dry_bulb, weather.humidity_ratio, weather.pressure)
+    calendar = {"month": weather.month, "hour": weather.hour, "weekday": weather.weekday}
+    flow = mass_flow(
+        scheme.airflow,
+        **calendar,
+        dry_bulb=weather.dry_bulb,
+        humidity_ratio=weather.humidity_ratio,
+        pressure=weather.pressure,
+    )
+    return run_hours(scheme, Hours(**calendar, outdoor=outdoor, mass_flow=flow), weather)
+
+
+def variant(year: Year, index: int, scheme: Scheme) -> Year:
+    """One variant of a stacked year as a year of its own; ``scheme`` is the variant's own scheme."""
+    size = year.coil_cooling.shape[-1]
+
+    def row(value: Any) -> Any:
+        if np.ndim(value) < 2:
+            return value
+        return np.broadcast_to(value, (*np.shape(value)[:-1], size))[min(index, len(value) - 1)]
+
+    def rows(item: Any) -> Any:
+        fields = {f.name: getattr(item, f.name) for f in dataclasses.fields(item)}
+        return type(item)(**{name: row(value) for name, value in fields.items()})
+
+    stream = year.airstream
+    hours = dataclasses.replace(
+        stream.hours, outdoor=rows(stream.hours.outdoor), mass_flow=row(stream.hours.mass_flow)
+    )
+    passages = tuple(
+        dataclasses.replace(
+            p,
+            exchange=dataclasses.replace(
+                rows(p.exchange), flags={k: row(v) for k, v in p.exchange.flags.items()}
+            ),
+        )
+        for p in stream.passages
+    )
+    points = {name: rows(state) for name, state in stream.points.items()}
+    own = Airstream(hours=hours, request=rows(stream.request), points=points, passages=passages)
+    return Year(scheme=scheme, airstream=own, weather=year.weather)
