@@ -141,7 +141,23 @@ def _cubic(t: ArrayLike, c: tuple[float, ...]) -> Any:
 def _log_enhancement(t: ArrayLike, p: ArrayLike, e: ArrayLike, ice: bool) -> Array:
     alpha, beta = (_ALPHA_ICE, _BETA_ICE) if ice else (_ALPHA_LIQUID, _BETA_LIQUID)
     ratio = p / e
-    return np.asarray(_cubic(t, alpha) * (1.0 - 1.0 / ratio) + np.exp(_cubic(t, beta)) * (ratio - 1.0))
+    if ice:
+        # moved by at most 0.013 %, so that both curves meet at the triple point and have one inverse
+        triple = p / _TRIPLE_PRESSURE
+        meet = _MEET_ALPHA * (1.0 - 1.0 / triple) + _MEET_BETA * (triple - 1.0) + _MEET_PRESSURE
+    log_f = _cubic(t, alpha) * (1.0 - 1.0 / ratio) + np.exp(_cubic(t, beta)) * (ratio - 1.0)
+    return np.asarray(log_f + meet if ice else log_f)
+
+
+# What separates the two branches at the triple point, where they have to meet.
+_TRIPLE_PRESSURE: Final = float(np.exp(_log_pressure(TRIPLE_POINT + ZERO_CELSIUS, _LIQUID)))
+_MEET_PRESSURE: Final = float(
+    _log_pressure(TRIPLE_POINT + ZERO_CELSIUS, _LIQUID) - _log_pressure(TRIPLE_POINT + ZERO_CELSIUS, _ICE)
+)
+_MEET_ALPHA: Final = _cubic(TRIPLE_POINT, _ALPHA_LIQUID) - _cubic(TRIPLE_POINT, _ALPHA_ICE)
+_MEET_BETA: Final = float(
+    np.exp(_cubic(TRIPLE_POINT, _BETA_LIQUID)) - np.exp(_cubic(TRIPLE_POINT, _BETA_ICE))
+)
 
 
 def _branch_pressure(t: ArrayLike, p: ArrayLike, ice: bool) -> Array:

@@ -96,7 +96,7 @@ def read_scheme_text(name: str | Path) -> tuple[str, bytes]:
     )
 
 
-def load_scheme(name: str | Path, settings: Mapping[str, str] | None = None) -> Scheme:
+def load_scheme(name: str | Path, settings: Mapping[str, Any] | None = None) -> Scheme:
     """Read a scheme file, or a bundled scheme by its name.
 
     Parameters
@@ -104,7 +104,7 @@ def load_scheme(name: str | Path, settings: Mapping[str, str] | None = None) -> 
     name
         Path of a TOML file, or the name of a bundled scheme.
     settings
-        Overrides by path, each written as in the file: ``{"coil.bypass_factor": "0.1"}``.
+        Overrides by path, each as it would stand in the file: ``{"coil.bypass_factor": 0.1}``.
 
     Raises
     ------
@@ -121,7 +121,7 @@ def load_scheme(name: str | Path, settings: Mapping[str, str] | None = None) -> 
     return parse_scheme(text, shown, settings)
 
 
-def parse_scheme(text: str, name: str = "scheme.toml", settings: Mapping[str, str] | None = None) -> Scheme:
+def parse_scheme(text: str, name: str = "scheme.toml", settings: Mapping[str, Any] | None = None) -> Scheme:
     """A scheme from the text of its file; ``name`` is what errors call it."""
     try:
         tables = tomllib.loads(text)
@@ -154,7 +154,7 @@ class _Reader:
 
     # overrides
 
-    def override(self, tables: dict[str, Any], settings: Mapping[str, str]) -> dict[str, Any]:
+    def override(self, tables: dict[str, Any], settings: Mapping[str, Any]) -> dict[str, Any]:
         """A copy of the tables with every override put in its place."""
         tables = copy.deepcopy(tables)
         for path, text in settings.items():
@@ -471,8 +471,10 @@ def _full_hour(text: str) -> int:
     return int(hour)
 
 
-def _literal(text: str) -> Any:
+def _literal(text: Any) -> Any:
     """An override's text as the file would hold it: a table or a list is TOML, all else is a text."""
+    if not isinstance(text, str):
+        return text
     stripped = text.strip()
     if stripped.startswith(("{", "[", '"')):
         try:

@@ -10,7 +10,7 @@ from __future__ import annotations
 import dataclasses
 from dataclasses import dataclass
 from enum import IntEnum
-from functools import cached_property
+from functools import cached_property, reduce
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -283,7 +283,7 @@ def _balance(airstream: Airstream) -> tuple[Array, Array]:
     m = airstream.hours.mass_flow
     points = airstream.points
     enthalpy = {n: moist_air.enthalpy(s.dry_bulb, s.humidity_ratio, s.pressure) for n, s in points.items()}
-    heat_scale = m * np.maximum(np.maximum.reduce([np.abs(h) for h in enthalpy.values()]), 1.0)
+    heat_scale = m * np.maximum(reduce(np.maximum, map(np.abs, enthalpy.values())), 1.0)
     water_scale = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
     whole_heat: Any = m * (enthalpy["supply"] - enthalpy["outdoor"])
     whole_water: Any = m * (points["supply"].humidity_ratio - points["outdoor"].humidity_ratio)

@@ -30,6 +30,7 @@ class ScheduleRule(Settings):
         "fraction",
         least=0.0,
         most=1.0,
+        default=1.0,
         doc="share of the airflow in these hours; 0 is off",
         example="1.0",
     )

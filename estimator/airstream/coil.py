@@ -173,9 +173,9 @@ class _Task:
         sizes = (coil.least_surface_temperature, coil.capacity, coil.lockout_below)
         shapes = [np.shape(x) for x in (*parts, *sizes) if x is not None]
         self.shape = np.broadcast_shapes(*shapes)
-        self.t = np.array(np.broadcast_to(air.dry_bulb, self.shape))
-        self.w = np.array(np.broadcast_to(air.humidity_ratio, self.shape))
-        self.h = np.array(np.broadcast_to(air.enthalpy, self.shape))
+        self.t = np.array(np.broadcast_to(air.dry_bulb, self.shape), order="C")
+        self.w = np.array(np.broadcast_to(air.humidity_ratio, self.shape), order="C")
+        self.h = np.array(np.broadcast_to(air.enthalpy, self.shape), order="C")
         self.held = np.zeros(self.shape, dtype=bool)
         self.limited = np.zeros(self.shape, dtype=bool)
         self.locked = np.zeros(self.shape, dtype=bool)

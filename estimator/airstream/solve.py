@@ -17,7 +17,10 @@ from estimator.moist_air import Array
 
 __all__ = ["between", "coupled"]
 
+_STRAIGHT_STEPS: Final = 25
 _MOST_STEPS: Final = 80
+#: bounds this near are as near as a root in degC can be had
+_SMALLEST_GAP: Final = 1e-12
 _COUPLED_TOLERANCE: Final = 1e-6
 _MOST_COUPLED_STEPS: Final = 30
 _DIFFERENCE_STEP: Final = 1e-4
@@ -37,12 +40,13 @@ def between(
     ``residual(x, which)`` gives the residuals of the elements ``which`` at ``x``. It must be monotone in
     ``x`` and have opposite signs at the bounds, or be zero at one. Regula falsi after Anderson and Bjorck
     (BIT 13, 1973): as quick as the secant rule where the residual is nearly straight, never outside the
-    bounds.
+    bounds; then bisection for what is left. Where the residual jumps over zero, as coil heat does when
+    water begins to freeze, the near side on which it is negative is returned.
 
     Raises
     ------
     ConvergenceError
-        The residual does not change sign, or stays above ``tolerance``.
+        The residual does not change sign.
     """
     which = np.arange(low.size)
     a, b = low.astype(float), high.astype(float)
@@ -52,14 +56,15 @@ def between(
     nearer = np.abs(fa) < np.abs(fb)
     a, b, fa, fb = (np.where(nearer, *pair) for pair in ((b, a), (a, b), (fb, fa), (fa, fb)))
     root = b.copy()
-    for _ in range(_MOST_STEPS):
-        # bounds that have met, in floating point, are as near as a root can be had
-        unfinished = (np.abs(fb) > tolerance) & (np.abs(b - a) > 1e-12)
-        root[which] = b
+    for step in range(_MOST_STEPS):
+        apart = np.abs(b - a) > _SMALLEST_GAP
+        root[which] = np.where(apart | (fb <= 0.0), b, a)
+        unfinished = apart & (np.abs(fb) > tolerance)
         which, a, b, fa, fb = (v[unfinished] for v in (which, a, b, fa, fb))
         if which.size == 0:
             return root
-        x = np.clip(b - fb * (b - a) / (fb - fa), np.minimum(a, b), np.maximum(a, b))
+        straight = b - fb * (b - a) / (fb - fa)
+        x = np.clip(straight, np.minimum(a, b), np.maximum(a, b)) if step < _STRAIGHT_STEPS else 0.5 * (a + b)
         fx = residual(x, which)
         crossed = fx * fb < 0.0
         weight = 1.0 - fx / fb
