@@ -91,6 +91,7 @@ ft = 0.3048 * m
 in = 0.0254 * m
 L = 0.001 * m ** 3
 US_gal = 231 * in ** 3
+water = 999.7 * kg / m ** 3
 gpm = US_gal / min
 cfm = ft ** 3 / min
 cfh = ft ** 3 / h
@@ -122,7 +123,8 @@ degC = K; offset: 273.15
 degF = 5 / 9 * K; offset: 255.37222222222223
 """
 
-# How a unit is written here -> how the units library is told of it.
+# How a unit is written here -> how the units library is told of it. A volume of condensate stands for its
+# mass, at the density of water at 10 degC (999.7 kg/m3, common practice).
 _EXPRESSIONS: Final = {
     "1": "",
     "%": "percent",
@@ -172,9 +174,9 @@ _EXPRESSIONS: Final = {
     "ton-h": "ton * h",
     "kg": "kg",
     "lb": "lb",
-    "L": "L",
-    "m3": "m ** 3",
-    "US gal": "US_gal",
+    "L": "L * water",
+    "m3": "m ** 3 * water",
+    "US gal": "US_gal * water",
     "m": "m",
     "ft": "ft",
     "h": "h",
@@ -236,8 +238,7 @@ _UNITS: Final[dict[str, tuple[str, ...]]] = {
     "m3/kg": ("m3/kg", "ft3/lb"),
     "kW": _POWER,
     "kWh": _ENERGY,
-    "kg": ("kg", "lb", "L", "US gal"),
-    "L": ("L", "m3", "US gal"),
+    "kg": ("kg", "lb", "L", "m3", "US gal"),
     "m": ("m", "ft"),
     "h": ("h",),
     "/kWh": _PRICE,
@@ -297,7 +298,6 @@ QUANTITIES: Final[dict[str, Quantity]] = _table(
     _q("water", "Condensate", "m_w", "kg", "US gal", (0, 0), 0.0),
     _q("water rate", "Condensate rate", "m_w", "kg/h", "lb/h", (1, 1), 0.0),
     _q("moisture per energy", "Moisture removed per kWh", "MRE", "kg/kWh", "lb/kWh", (2, 2), 0.0),
-    _q("mass", "Mass", "m", "kg", "lb", (0, 0), 0.0),
     _q("elevation", "Elevation", "z", "m", "ft", (0, 0), -500.0, 6_000.0),
     _q("fraction", "Fraction", "", "1", "1", (3, 3), 0.0, 1.0),
     _q("coefficient of performance", "Coefficient of performance", "COP", "1", "1", (2, 2), 0.0, 30.0),

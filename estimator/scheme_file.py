@@ -50,8 +50,21 @@ _SECTIONS: Final[dict[str, type]] = {
 _ALWAYS: Final = ("coil", "plant", "prices", "carbon")
 _MOST_BYTES: Final = 1_000_000
 
-_DAYS: Final = ("mon", "tue", "wed", "thu", "fri", "sat", "sun")
-_MONTHS: Final = ("jan", "feb", "mar", "apr", "may", "jun", "jul", "aug", "sep", "oct", "nov", "dec")
+_DAYS: Final = ("monday", "tuesday", "wednesday", "thursday", "friday", "saturday", "sunday")
+_MONTHS: Final = (
+    "january",
+    "february",
+    "march",
+    "april",
+    "may",
+    "june",
+    "july",
+    "august",
+    "september",
+    "october",
+    "november",
+    "december",
+)
 
 
 def bundled_schemes() -> dict[str, str]:
@@ -165,7 +178,9 @@ class _Reader:
         *way, key = path.split(".")
         here: Any = tables
         for i, step in enumerate(way):
-            if isinstance(here, dict) and not isinstance(here.get(step), dict | list):
+            if isinstance(here, dict) and step in ("reheat", "schedule"):
+                here.setdefault(step, [])
+            elif isinstance(here, dict) and not isinstance(here.get(step), dict | list):
                 given = here.get(step)
                 # one dry bulb stands for both ends of the band until one end is set by itself
                 both = (
@@ -439,13 +454,15 @@ _OUTDOOR: Final = Setting(
 
 def names_to_numbers(given: Any, names: tuple[str, ...], first: int) -> tuple[int, ...]:
     """Numbers of the days or months in ``"mon..fri"``, ``"sat"`` or ``["jan", "jul"]``; spans may wrap."""
-    allowed = f"{', '.join(names)}, a span such as '{names[0]}..{names[4]}', or a list of them"
+    short = [name[:3] for name in names]
+    allowed = f"{', '.join(short)}, a span such as '{short[0]}..{short[4]}', or a list of them"
 
     def index(word: Any) -> int:
-        short = word.strip().lower()[:3] if isinstance(word, str) else ""
-        if short not in names:
-            raise SchemeError(f"{word!r} is not known", allowed=allowed)
-        return names.index(short)
+        folded = word.strip().lower() if isinstance(word, str) else ""
+        for known in (short, names):
+            if folded in known:
+                return known.index(folded)
+        raise SchemeError(f"{word!r} is not known", allowed=allowed)
 
     items = given if isinstance(given, list) else [given]
     found: set[int] = set()
