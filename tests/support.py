@@ -64,9 +64,13 @@ def weather_year(dry_bulb, dew_point, pressure=101_325.0, *, latitude=35.0, days
     """A made-up typical year of ``days`` days; a number stands for every hour."""
     n = 24 * days
     index = np.arange(n)
-    date = np.datetime64("2024-01-01" if days == 366 else "2023-01-01") + (index // 24).astype("timedelta64[D]")
+    date = np.datetime64("2024-01-01" if days == 366 else "2023-01-01") + (index // 24).astype(
+        "timedelta64[D]"
+    )
     month = date.astype("datetime64[M]").astype(int) % 12 + 1
-    t, td, p = (np.broadcast_to(np.asarray(x, dtype=float), n).copy() for x in (dry_bulb, dew_point, pressure))
+    t, td, p = (
+        np.broadcast_to(np.asarray(x, dtype=float), n).copy() for x in (dry_bulb, dew_point, pressure)
+    )
     return WeatherYear(
         site="Nowhere",
         latitude=latitude,

@@ -108,7 +108,9 @@ def test_a_wet_coil_is_a_mixture_of_entering_air_and_saturated_surface_air(bypas
 
 def test_where_no_apparatus_dew_point_exists_the_hour_is_unmet_with_finite_numbers():
     # half the air bypasses, so the surface would have to be drier than dry: 0.5 x 20 g/kg > 6 g/kg
-    year = run_hours(scheme(coil__bypass_factor="0.5", supply__dew_point="6 degC"), hours([32.0], [0.020], [1e5]))
+    year = run_hours(
+        scheme(coil__bypass_factor="0.5", supply__dew_point="6 degC"), hours([32.0], [0.020], [1e5])
+    )
     assert year.unmet["dew_point"].all()
     assert year.coil_flags["at least surface temperature"].all()
     assert year.apparatus_dew_point() == pytest.approx([1.0], abs=1e-6)
@@ -198,7 +200,11 @@ def test_half_the_flow_is_half_of_everything_extensive():
     half = totals(run_year(weather, scheme(BASE + FAN, airflow__outdoor_air="1 m3/s"))).annual
     for name in vars(whole):
         value = getattr(whole, name)
-        if not name.startswith("hours") and isinstance(value, float) and name != "moisture_removed_per_kwh_kg":
+        if (
+            not name.startswith("hours")
+            and isinstance(value, float)
+            and name != "moisture_removed_per_kwh_kg"
+        ):
             assert getattr(half, name) == pytest.approx(value / 2, rel=1e-12, abs=1e-9), name
     assert half.hours_drying == whole.hours_drying
 
