@@ -76,7 +76,9 @@ def test_a_bad_file_among_good_ones(dewledger, years, tmp_path):
     assert told[0].startswith("dewledger: empty.epw: ")
     assert told[1].startswith("dewledger: nowhere.epw: ")
     document = json.loads((tmp_path / "w.json").read_text(encoding="utf-8"))
-    assert [entry["file"] for entry in document["weather"]] == [Path(years[n]).name for n in ("humid", "cold")]
+    assert [entry["file"] for entry in document["weather"]] == [
+        Path(years[n]).name for n in ("humid", "cold")
+    ]
     assert [entry["file"] for entry in document["failed"]] == ["empty.epw", "nowhere.epw"]
 
 

@@ -1,0 +1,1 @@
+"""Results as text, JSON documents and tables: pure functions, nothing is computed or written here."""
