@@ -30,7 +30,7 @@ if TYPE_CHECKING:
     from estimator.result import YearResult, evaluate
     from estimator.scheme import Scheme, stack
     from estimator.scheme_file import load_scheme, parse_scheme
-    from estimator.totals import Totals, totals
+    from estimator.totals import Totals, sum_year
     from estimator.weather import WeatherOptions, read_weather
     from estimator.weather.model import WeatherYear
     from estimator.year import Year, run_year
@@ -61,7 +61,7 @@ _HOME = {
     "run_hour": "hour",
     "run_year": "year",
     "stack": "scheme",
-    "totals": "totals",
+    "sum_year": "totals",
 }
 
 __all__ = [
@@ -88,7 +88,7 @@ __all__ = [
     "run_hour",
     "run_year",
     "stack",
-    "totals",
+    "sum_year",
 ]
 
 

@@ -48,32 +48,42 @@ def replacing(path: Path, mode: str = "wb") -> Iterator[IO[Any]]:
         The folder does not exist or cannot be written to, or ``path`` is a folder.
     """
     text = "b" not in mode
-    try:
-        if path.is_dir():
-            raise IsADirectoryError(f"{path} is a folder")
-        handle, name = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.", suffix=".part")
-    except OSError as error:
-        raise InputError(
-            f"cannot be written ({error.strerror or error})",
-            where=str(path),
-            hint="name a file in a folder that exists and may be written to",
-        ) from error
+    # a link is followed: what it points to is written, and the link stays
+    target = Path(os.path.realpath(path))
+    with _told(path):
+        if target.exists() and not target.is_file():
+            raise InputError("is not a regular file", where=str(path), hint="name a file")
+        handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.", suffix=".part")
     part = Path(name)
     try:
         with os.fdopen(
             handle, mode, encoding="utf-8" if text else None, newline="" if text else None
         ) as stream:
             yield stream
-            stream.flush()
-            os.fsync(stream.fileno())
-        # mkstemp's own rights are for the owner alone; give what a plain open would have given
-        umask = os.umask(0)
-        os.umask(umask)
-        part.chmod(0o666 & ~umask)
-        part.replace(path)
+            with _told(path):
+                stream.flush()
+                os.fsync(stream.fileno())
+        with _told(path):
+            # mkstemp's own rights are for the owner alone; give what a plain open would have given
+            umask = os.umask(0)
+            os.umask(umask)
+            part.chmod(0o666 & ~umask)
+            part.replace(target)
     except BaseException:
         part.unlink(missing_ok=True)
         raise
+
+
+@contextmanager
+def _told(path: Path) -> Iterator[None]:
+    try:
+        yield
+    except OSError as error:
+        raise InputError(
+            f"cannot be written ({error.strerror or error})",
+            where=str(path),
+            hint="name a file in a folder that exists and may be written to",
+        ) from error
 
 
 def write_text(path: Path, text: str) -> None:

@@ -18,7 +18,7 @@ from estimator.scheme import Scheme
 from estimator.settings import Setpoint
 from estimator.year import Mode, Year, run_hours
 
-__all__ = ["HourExchange", "HourResult", "OutdoorAir", "StatePoint", "run_hour"]
+__all__ = ["HourExchange", "HourResult", "OutdoorAir", "StatePoint", "follows_calendar", "run_hour"]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -122,7 +122,8 @@ def _electricity(year: Year) -> float | None:
     return total
 
 
-def _follows_calendar(scheme: Scheme) -> bool:
+def follows_calendar(scheme: Scheme) -> bool:
+    """Whether the schedule or a target of the scheme depends on the time."""
     targets = (scheme.supply.dew_point, scheme.supply.low, scheme.supply.high)
     return bool(scheme.airflow.schedule) or any(
         isinstance(target, Setpoint) and not target.outdoor and len(target.values) > 1 for target in targets
@@ -130,7 +131,7 @@ def _follows_calendar(scheme: Scheme) -> bool:
 
 
 def _hours(scheme: Scheme, outdoor: OutdoorAir) -> Hours:
-    if outdoor.month is None and _follows_calendar(scheme):
+    if outdoor.month is None and follows_calendar(scheme):
         raise InputError(
             "the scheme follows the calendar and no time is given",
             where=scheme.source.file or scheme.name,

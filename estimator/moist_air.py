@@ -49,6 +49,7 @@ __all__ = [
     "enthalpy",
     "humidity_ratio_from_relative_humidity",
     "humidity_ratio_from_vapour_pressure",
+    "humidity_ratio_from_wet_bulb",
     "ice_enthalpy",
     "liquid_water_enthalpy",
     "relative_humidity",
@@ -390,6 +391,25 @@ def wet_bulb(t: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
     25.0
     """
     return adiabatic_saturation_temperature(enthalpy(t, w, p), w, p)
+
+
+def humidity_ratio_from_wet_bulb(t: ArrayLike, wet_bulb: ArrayLike, p: ArrayLike) -> Array:
+    """Humidity ratio, kg/kg, of air of this dry bulb and thermodynamic wet bulb; over ice below 0.01 degC.
+
+    The exact inverse of ``wet_bulb`` (ASHRAE 2021, ch. 1, eq. 33), in which enthalpy is quadratic in the
+    humidity ratio. Negative where even dry air has a higher wet bulb.
+
+    >>> w = humidity_ratio_from_wet_bulb(40.0, 20.0, 101325.0)
+    >>> round(float(wet_bulb(40.0, w, 101325.0)), 6)
+    20.0
+    """
+    w_s = saturation_humidity_ratio(wet_bulb, p)
+    h_w = water_enthalpy(wet_bulb)
+    q = p / STANDARD_PRESSURE
+    square = q * (_E0 + _E1 * t)
+    linear = _B0 + _B1 * t + q * _D0 - h_w
+    rest = enthalpy(t, 0.0, p) + w_s * h_w - enthalpy(wet_bulb, w_s, p)
+    return np.asarray(-2.0 * rest / (linear + np.sqrt(linear * linear - 4.0 * square * rest)))
 
 
 def saturated_from_enthalpy(h: ArrayLike, p: ArrayLike, water: ArrayLike = 0.0) -> Array:

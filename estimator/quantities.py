@@ -34,6 +34,7 @@ __all__ = [
     "Quantity",
     "UnitSystem",
     "convert",
+    "count",
     "likeliest",
     "parse_value",
     "parse_values",
@@ -59,20 +60,32 @@ class Quantity:
     #: plausible range in the SI unit; what lies outside is refused where it is read
     least: float = -math.inf
     most: float = math.inf
+    #: the unit shown with ``--units si`` where that of ``unit`` would make small numbers
+    si_unit: str = ""
 
     def unit_for(self, system: UnitSystem) -> str:
         """The unit in which ``system`` shows this quantity."""
-        return self.unit if system == "si" else self.ip_unit
+        return (self.si_unit or self.unit) if system == "si" else self.ip_unit
 
-    def show(self, value: float, system: UnitSystem = "si", *, with_unit: bool = True) -> str:
-        """``value``, given in SI, as text in the units of ``system``."""
+    def show(
+        self,
+        value: float,
+        system: UnitSystem = "si",
+        *,
+        with_unit: bool = True,
+        decimals: int | None = None,
+    ) -> str:
+        """``value``, given in ``unit``, as text in the units of ``system``."""
         unit = self.unit_for(system)
-        decimals = self.decimals[0 if system == "si" else 1]
-        shown = convert(value, self.unit, unit)
-        text = f"{shown:,.{decimals}f}".replace(",", " ")
-        if float(text.replace(" ", "")) == 0.0:
-            text = text.removeprefix("-")
+        places = self.decimals[0 if system == "si" else 1] if decimals is None else decimals
+        text = count(convert(value, self.unit, unit), places)
         return f"{text} {unit}" if with_unit and unit != "1" else text
+
+
+def count(value: float, decimals: int = 0) -> str:
+    """A number with a space between thousands; never minus zero."""
+    text = f"{value:,.{decimals}f}".replace(",", " ")
+    return text.lstrip("-") if not any(c in "123456789" for c in text) else text
 
 
 # Definitions for the units library, one a line: name, what it is, further spellings. Its own stock of
@@ -260,6 +273,7 @@ def _q(
     decimals: tuple[int, int],
     least: float = -math.inf,
     most: float = math.inf,
+    si_unit: str = "",
 ) -> Quantity:
     return Quantity(
         name=name,
@@ -270,6 +284,7 @@ def _q(
         decimals=decimals,
         least=least,
         most=most,
+        si_unit=si_unit,
     )
 
 
@@ -280,8 +295,8 @@ QUANTITIES: Final[dict[str, Quantity]] = _table(
     _q("wet bulb", "Wet bulb", "t_wb", "degC", "degF", (2, 1), -90.0, 40.0),
     _q("temperature", "Temperature", "t", "degC", "degF", (1, 1), -60.0, 65.0),
     _q("temperature difference", "Temperature difference", "dt", "K", "delta degF", (2, 1)),
-    _q("humidity ratio", "Humidity ratio", "W", "kg/kg", "gr/lb", (5, 1), 0.0, 0.12),
-    _q("relative humidity", "Relative humidity", "RH", "1", "%", (3, 1), 0.0, 1.0),
+    _q("humidity ratio", "Humidity ratio", "W", "kg/kg", "gr/lb", (2, 1), 0.0, 0.12, "g/kg"),
+    _q("relative humidity", "Relative humidity", "RH", "1", "%", (1, 1), 0.0, 1.0, "%"),
     _q("enthalpy", "Enthalpy", "h", "kJ/kg", "Btu/lb", (2, 2)),
     _q("station pressure", "Station pressure", "p", "Pa", "inHg", (0, 2), 45_000.0, 110_000.0),
     _q("fan pressure", "Fan total pressure", "dp", "Pa", "inH2O", (0, 2), 0.0, 5_000.0),
@@ -417,11 +432,16 @@ def _one(item: Any, quantity: Quantity, where: str, unit: str = "") -> float:
     value = _to_si(number, own or unit, quantity, where, shown=str(item))
     if not math.isfinite(value) or not quantity.least <= value <= quantity.most:
         raise QuantityError(
-            f"{str(item)!r} is not plausible for a {quantity.name}",
-            where=where,
-            allowed=f"{quantity.least:g} to {quantity.most:g} {quantity.unit}".removesuffix(" 1"),
+            f"{str(item)!r} is out of range for {quantity.name}", where=where, allowed=_bounds(quantity)
         )
     return value
+
+
+def _bounds(quantity: Quantity) -> str:
+    unit = "" if quantity.unit == "1" else f" {quantity.unit}"
+    if math.isinf(quantity.most):
+        return f"at least {quantity.least:g}{unit}" if math.isfinite(quantity.least) else "a finite number"
+    return f"{quantity.least:g} to {quantity.most:g}{unit}"
 
 
 def _to_si(number: float, unit: str, quantity: Quantity, where: str, shown: str) -> float:
@@ -438,7 +458,7 @@ def _to_si(number: float, unit: str, quantity: Quantity, where: str, shown: str)
         return number
     if name not in allowed:
         raise QuantityError(
-            f"{unit!r} is not a unit of a {quantity.name}",
+            f"{unit!r} is not a unit of {quantity.name}",
             where=where,
             allowed=", ".join(u for u in allowed if u != "1"),
             hint=likeliest(unit, allowed),

@@ -10,8 +10,9 @@ from dataclasses import dataclass
 import numpy as np
 
 from estimator import pricing
+from estimator.quantities import QUANTITIES
 from estimator.scheme import Scheme
-from estimator.totals import SeasonMap, Totals, totals
+from estimator.totals import SeasonMap, Totals, sum_year
 from estimator.weather.model import WeatherYear
 from estimator.year import Year, run_year
 
@@ -34,7 +35,7 @@ class YearResult:
 def evaluate(weather: WeatherYear, scheme: Scheme, seasons: SeasonMap | None = None) -> YearResult:
     """Run a scheme through a weather year, sum it, price it and say what a reader must know."""
     year = run_year(weather, scheme)
-    sums = totals(year, seasons)
+    sums = sum_year(year, seasons)
     return YearResult(
         weather=weather,
         scheme=scheme,
@@ -72,23 +73,27 @@ def _notes(year: Year, sums: Totals) -> tuple[str, ...]:
         notes.append("plant.cooling_cop is not set, so electricity, cost and carbon are not stated.")
     limited = int(np.count_nonzero(year.coil_flags["at capacity"]))
     if limited:
-        notes.append(f"The coil is at its total cooling capacity in {limited} h.")
+        notes.append(f"The coil is at its total cooling capacity in {_hours(limited)}.")
     held = int(np.count_nonzero(year.coil_flags["at least surface temperature"]))
     if held:
         notes.append(
             "The coil is held at its least surface temperature, "
-            f"{scheme.coil.least_surface_temperature:g} degC, in {held} h."
+            f"{scheme.coil.least_surface_temperature:g} degC, in {_hours(held)}."
         )
     locked = int(np.count_nonzero(year.coil_flags["locked out"]))
     if locked:
-        notes.append(f"The coil is locked out in {locked} h.")
+        notes.append(f"The coil is locked out in {_hours(locked)}.")
     return tuple(notes)
+
+
+def _hours(count: int) -> str:
+    return QUANTITIES["hours"].show(count)
 
 
 def _finding_notes(weather: WeatherYear) -> list[str]:
     found = []
     for finding in weather.findings:
-        count = f" ({finding.count} h)" if finding.count is not None else ""
+        count = f" ({_hours(finding.count)})" if finding.count is not None else ""
         where = f", {finding.where}" if finding.where else ""
         found.append(f"Weather: {finding.what}{count}{where}.")
     return found
@@ -101,17 +106,18 @@ def _cautions(year: Year, sums: Totals) -> tuple[str, ...]:
         cautions.append("The weather is synthetic: made up for demonstration, of no real place.")
     if weather is not None and weather.calendar == "typical":
         cautions.append(
-            "A typical year leaves out extremes: its peaks must not size equipment. Use design conditions."
+            "A typical year leaves out extremes: its peaks must not size equipment. "
+            "Size on design conditions."
         )
     if sums.annual.hours_unmet:
         cautions.append(
-            f"The supply misses a target in {sums.annual.hours_unmet} h; energy of a scheme that "
+            f"The supply misses a target in {_hours(sums.annual.hours_unmet)}; energy of a scheme that "
             "does less is not comparable."
         )
     if sums.annual.hours_frozen:
         cautions.append(
-            f"Frost forms on the coil in {sums.annual.hours_frozen} h: airflow and capacity would fall and "
-            "defrosting is not modelled."
+            f"Frost forms on the coil in {_hours(sums.annual.hours_frozen)}: airflow and capacity would "
+            "fall, and defrosting is not modelled."
         )
     if sums.annual.condensate_kg > 0.0:
         cautions.append(

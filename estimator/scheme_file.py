@@ -308,8 +308,9 @@ class _Reader:
 
     def _number(self, place: str, rule: Setting, given: Any) -> float | None:
         assert rule.quantity is not None
+        own = dataclasses.replace(rule.quantity, least=rule.lowest, most=rule.highest)
         try:
-            number = parse_value(given, rule.quantity, where=place)
+            number = parse_value(given, own, where=place)
         except InputError as error:
             self.problems.append(error)
             return None

@@ -58,13 +58,19 @@ class Setting:
         if self.quantity is None:
             return "a text"
         unit = "" if self.quantity.unit == "1" else f" {self.quantity.unit}"
-        if self.least is not None and self.most is not None:
-            return f"{'above ' if self.above else ''}{self.least:g} to {self.most:g}{unit}"
-        if self.least is not None:
-            return f"{'above' if self.above else 'at least'} {self.least:g}{unit}"
-        if self.most is not None:
-            return f"at most {self.most:g}{unit}"
-        return f"{self.quantity.least:g} to {self.quantity.most:g}{unit}"
+        return f"{'above ' if self.above else ''}{self.lowest:g} to {self.highest:g}{unit}"
+
+    @property
+    def lowest(self) -> float:
+        """The least value allowed, or the bound itself where the setting must lie above it."""
+        assert self.quantity is not None
+        return self.quantity.least if self.least is None else self.least
+
+    @property
+    def highest(self) -> float:
+        """The most that is allowed."""
+        assert self.quantity is not None
+        return self.quantity.most if self.most is None else self.most
 
     def refuses(self, value: Any) -> bool:
         """Whether ``value``, in SI, lies outside what is allowed; an array if any element does."""
@@ -77,10 +83,8 @@ class Setting:
         if self.quantity is None:
             return False
         number = np.asarray(value, dtype=float)
-        least = self.quantity.least if self.least is None else self.least
-        most = self.quantity.most if self.most is None else self.most
-        low = number <= least if self.above else number < least
-        return bool(np.any(low | (number > most) | ~np.isfinite(number)))
+        low = number <= self.lowest if self.above else number < self.lowest
+        return bool(np.any(low | (number > self.highest) | ~np.isfinite(number)))
 
 
 def setting(quantity: str | None = None, *, default: Any = REQUIRED, **rest: Any) -> Any:

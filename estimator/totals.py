@@ -29,7 +29,7 @@ __all__ = [
     "monthly",
     "parse_seasons",
     "seasons_by_latitude",
-    "totals",
+    "sum_year",
 ]
 
 #: Name of each season and the months in it, 1 to 12; together they hold every month once.
@@ -253,7 +253,7 @@ def _peak(year: Year, months: list[dict[str, tuple[float, int]]]) -> Peaks:
     return Peaks(**fields)
 
 
-def totals(year: Year, seasons: SeasonMap | None = None) -> Totals:
+def sum_year(year: Year, seasons: SeasonMap | None = None) -> Totals:
     """Sum one year (no leading axis) over the whole, its seasons and its months.
 
     Parameters

@@ -176,35 +176,17 @@ def _humidity(text: str, dry_bulb: float, pressure: float) -> float:
 
 
 def _from_wet_bulb(wet_bulb: float, dry_bulb: float, pressure: float) -> float:
-    """Humidity ratio of air of a wet bulb: adiabatic saturation solved for the water that it lacks.
-
-    The equation is that of ``moist_air.wet_bulb``, in which the enthalpy is all but linear in the humidity
-    ratio, so a secant through it converges in a few steps.
-    """
     from estimator import moist_air
 
-    w_s = float(moist_air.saturation_humidity_ratio(wet_bulb, pressure))
-    h_s = float(moist_air.enthalpy(wet_bulb, w_s, pressure))
-    h_w = float(moist_air.water_enthalpy(wet_bulb))
-
-    def excess(w: float) -> float:
-        return float(moist_air.enthalpy(dry_bulb, w, pressure)) + (w_s - w) * h_w - h_s
-
-    low, high = 0.0, w_s
-    at_low, at_high = excess(low), excess(high)
-    if at_low > 0.0:
+    w = float(moist_air.humidity_ratio_from_wet_bulb(dry_bulb, wet_bulb, pressure))
+    if w < 0.0:
         driest = float(moist_air.wet_bulb(dry_bulb, 0.0, pressure))
         raise InputError(
             f"a wet bulb of {wet_bulb:g} degC is lower than that of dry air at {dry_bulb:g} degC",
             where="--air, humidity",
             allowed=f"{driest:.2f} to {dry_bulb:g} degC at this pressure",
         )
-    for _ in range(20):
-        if abs(at_high) < 1e-12 or at_high == at_low:
-            break
-        low, high, at_low = high, high - at_high * (high - low) / (at_high - at_low), at_high
-        at_high = excess(high)
-    again = float(moist_air.wet_bulb(dry_bulb, high, pressure))
+    again = float(moist_air.wet_bulb(dry_bulb, w, pressure))
     if abs(again - wet_bulb) > 1e-4:
         # close below 0 degC the same air has a wet bulb over ice and another over water
         raise InputError(
@@ -212,4 +194,4 @@ def _from_wet_bulb(wet_bulb: float, dry_bulb: float, pressure: float) -> float:
             where="--air, humidity",
             hint="give the dew point or the relative humidity",
         )
-    return high
+    return w

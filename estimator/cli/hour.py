@@ -135,16 +135,15 @@ def _check_choice(file: str | None, at: str | None, air: str | None, design: str
 
 
 def _run(scheme: Scheme, outdoor: OutdoorAir) -> HourResult:
-    from estimator.hour import run_hour
+    from estimator.hour import follows_calendar, run_hour
 
-    try:
-        return run_hour(scheme, outdoor)
-    except InputError as error:
-        if outdoor.month is not None or "--at" not in error.hint:
-            raise
-        # a design condition has no time, so the library's advice to say when is worded for this command
+    if outdoor.month is None and follows_calendar(scheme):
+        # the library's advice to say when, worded for this command
         t, w, p = outdoor.dry_bulb, 1000.0 * outdoor.humidity_ratio, outdoor.pressure
         air = f"{t:.2f} degC, {w:.3f} g/kg, {p:.0f} Pa"
         raise InputError(
-            error.problem, where=error.where, hint=f"say when: --air '{air}' --at '07-14 15:00'"
-        ) from error
+            "the scheme follows the calendar and no time is given",
+            where=scheme.source.file or scheme.name,
+            hint=f"say when: --air '{air}' --at '07-14 15:00'",
+        )
+    return run_hour(scheme, outdoor)

@@ -6,7 +6,7 @@ import textwrap
 from collections.abc import Iterable, Sequence
 from typing import Final
 
-from estimator.quantities import QUANTITIES, UnitSystem, convert
+from estimator.quantities import QUANTITIES, UnitSystem, count
 
 __all__ = [
     "NOT_STATED",
@@ -27,16 +27,9 @@ WIDTH: Final = 80
 #: Stands where a value is not fully determined.
 NOT_STATED: Final = "not stated"
 
-#: The thousands mark that ``Quantity.show`` uses.
-_MARK: Final = " "
-#: What a reader of a psychrometric chart expects where the table's own SI unit makes small numbers.
-_READABLE: Final = {"humidity ratio": ("g/kg", 2), "relative humidity": ("%", 1)}
-
 
 def unit(name: str, system: UnitSystem) -> str:
     """The unit in which the quantity ``name`` is shown; empty for a pure number."""
-    if name in _READABLE and (system == "si" or name == "relative humidity"):
-        return _READABLE[name][0]
     own = QUANTITIES[name].unit_for(system)
     return "" if own == "1" else own
 
@@ -52,20 +45,7 @@ def show(
     """``value``, given in the SI unit of the quantity ``name``, as text; ``NOT_STATED`` for None."""
     if value is None:
         return NOT_STATED
-    quantity = QUANTITIES[name]
-    to = unit(name, system) or "1"
-    if decimals is None:
-        decimals = quantity.decimals[0 if system == "si" else 1]
-        if to != quantity.unit_for(system):
-            decimals = _READABLE[name][1]
-    text = count(convert(value, quantity.unit, to), decimals)
-    return f"{text} {to}" if with_unit and to != "1" else text
-
-
-def count(value: float, decimals: int = 0) -> str:
-    """A number with the thousands mark; never minus zero."""
-    text = f"{value:,.{decimals}f}".replace(",", _MARK)
-    return text.lstrip("-") if not any(c in "123456789" for c in text) else text
+    return QUANTITIES[name].show(value, system, with_unit=with_unit, decimals=decimals)
 
 
 def heading(text: str) -> list[str]:
@@ -118,7 +98,8 @@ def _too_wide(lines: Iterable[str]) -> bool:
 
 
 def _unmarked(cell: str) -> str:
-    return cell.replace(_MARK, "") if cell.replace(_MARK, "").replace(".", "").lstrip("-").isdigit() else cell
+    bare = cell.replace(" ", "")
+    return bare if bare.replace(".", "").lstrip("-").isdigit() else cell
 
 
 def _cut(text: str, length: int) -> str:

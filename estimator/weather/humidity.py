@@ -49,9 +49,9 @@ def better_phase(t: Array, dew_point: Array, rh: Array) -> Phase:
     """The phase under which the file's own two columns agree better in the hours that tell the difference.
 
     Arrays of shape (hours,), NaN for missing, ``rh`` in %. "water" where fewer than 24 hours have a dry bulb
-    below freezing.
+    or a dew point below freezing.
     """
-    known = (t < 0.0) & ~np.isnan(dew_point) & ~np.isnan(rh)
+    known = ((t < 0.0) | (dew_point < 0.0)) & ~np.isnan(dew_point) & ~np.isnan(rh)
     if np.count_nonzero(known) < _ENOUGH:
         return "water"
     t, dew_point, rh = t[known], dew_point[known], rh[known]

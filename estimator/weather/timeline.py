@@ -189,11 +189,7 @@ def _kind(header: Header, years: tuple[int, ...], leap: bool) -> tuple[Calendar,
         return "typical", []
     year = years[0]
     if header.typical:
-        return "typical", [
-            Finding(
-                what=f"all rows carry the year {year}, but the header calls the year typical: taken as such"
-            )
-        ]
+        return "typical", []
     if leap and not calendar.isleap(year):
         return "typical", [
             Finding(

@@ -126,7 +126,7 @@ def test_targets_that_follow_month_or_outdoor_air_are_shown_whole(dewledger, tmp
         (("starter", "--set", "coil.bypas=0.1"), ("coil.bypas", "did you mean 'bypass_factor'?")),
         (("starter", "--set", "coil.bypass_factor=0.95"), ("coil.bypass_factor", "0 to 0.9")),
         (("starter", "--set", "fan.total_pressure=900"), ("fan.total_pressure", "has no unit", "900 Pa")),
-        (("starter", "--set", "fan.total_pressure=900 m"), ("'m' is not a unit of a fan pressure",)),
+        (("starter", "--set", "fan.total_pressure=900 m"), ("'m' is not a unit of fan pressure",)),
         (("starter", "--set", "coil.bypass_factor"), ("--set", "'coil.bypass_factor' is not KEY=VALUE")),
         (("starter", "--set", "=0.1"), ("--set", "is not KEY=VALUE")),
         (("starter", "--set", "a.b=1", "--set", "a.b=2"), ("--set", "'a.b' is set twice")),

@@ -21,16 +21,21 @@ def test_a_file_is_replaced_whole(tmp_path):
 def test_a_failure_half_way_leaves_what_was_there_and_nothing_else(tmp_path):
     path = tmp_path / "a.txt"
     write_text(path, "kept\n")
-    with pytest.raises(ZeroDivisionError), replacing(path, "w") as stream:
-        stream.write("half")
-        _ = 1 / 0
+
+    def fail_half_way() -> None:
+        with replacing(path, "w") as stream:
+            stream.write("half")
+            raise ArithmeticError
+
+    with pytest.raises(ArithmeticError):
+        fail_half_way()
     assert path.read_text() == "kept\n"
     assert list(tmp_path.iterdir()) == [path]
 
 
 @pytest.mark.parametrize("name", ["", "missing/a.txt"])
 def test_a_place_that_cannot_be_written_is_told(tmp_path, name):
-    with pytest.raises(InputError, match="cannot be written"):
+    with pytest.raises(InputError, match=r"cannot be written|not a regular file"):
         write_text(tmp_path / name, "x")
     assert list(tmp_path.iterdir()) == []
 

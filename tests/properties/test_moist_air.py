@@ -273,6 +273,7 @@ FUNCTIONS: list[tuple[Callable[..., Array], Arguments]] = [
     (ma.enthalpy, (T, W, P)),
     (ma.humidity_ratio_from_relative_humidity, (T, np.linspace(0.0, 1.0, T.size), P)),
     (ma.humidity_ratio_from_vapour_pressure, (E, P)),
+    (ma.humidity_ratio_from_wet_bulb, (T, ma.wet_bulb(T, W, P), P)),
     (ma.ice_enthalpy, (T,)),
     (ma.liquid_water_enthalpy, (T,)),
     (ma.relative_humidity, (T, W, P)),
@@ -388,3 +389,11 @@ def test_far_outside_the_range_is_an_error_and_not_a_number() -> None:
         ma.dew_point(1e-12, 101_325.0)
     with pytest.raises(ConvergenceError, match="range"):
         ma.saturated_from_enthalpy(2000.0, 101_325.0)
+
+
+@given(t=st.floats(-25.0, 60.0), rh=st.floats(0.02, 1.0), p=st.floats(60e3, 106e3))
+def test_wet_bulb_gives_back_the_humidity_ratio(t: float, rh: float, p: float) -> None:
+    """Except close below freezing, where one state has a wet bulb over water and another over ice."""
+    w = ma.humidity_ratio_from_relative_humidity(t, rh, p)
+    t_wb = ma.wet_bulb(t, w, p)
+    assert ma.humidity_ratio_from_wet_bulb(t, t_wb, p) == pytest.approx(float(w), abs=1e-12)

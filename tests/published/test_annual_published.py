@@ -9,7 +9,7 @@ from published.years import real_year
 
 from estimator import moist_air
 from estimator.scheme_file import parse_scheme
-from estimator.totals import PeriodTotals, Totals, totals
+from estimator.totals import PeriodTotals, Totals, sum_year
 from estimator.weather import WeatherYear
 from estimator.year import run_year
 
@@ -84,7 +84,7 @@ def saturated_leaving(site: str, dew_point: float) -> Totals:
         [[reheat]]
         source = "electric"
     """
-    return totals(run_year(real_year(site), parse_scheme(text)))
+    return sum_year(run_year(real_year(site), parse_scheme(text)))
 
 
 CONDENSATE = [

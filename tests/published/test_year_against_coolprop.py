@@ -17,7 +17,7 @@ from published.years import real_year
 
 from estimator.scheme import Scheme
 from estimator.scheme_file import parse_scheme
-from estimator.totals import totals
+from estimator.totals import sum_year
 from estimator.year import run_year
 
 #: A year's sum below this, kWh or kg, compares with it instead: ten watt-hours, where the true sum is nothing
@@ -58,7 +58,7 @@ def compare(site: str, pressure: float | None, unit: reference.Unit, tolerance: 
     hourly = reference.hours(weather.dry_bulb, weather.dew_point, weather.pressure, unit)
     expected = reference.total(hourly)
     year = run_year(weather, scheme_of(unit))
-    annual = totals(year).annual
+    annual = sum_year(year).annual
     for name in SUMS:
         target = pytest.approx(getattr(expected, name), rel=tolerance, abs=FLOOR)
         assert getattr(annual, name) == target, name
