@@ -89,6 +89,12 @@ class Scheme:
                 )
 
     @property
+    def variants(self) -> tuple[int, ...]:
+        """The leading axis of a stack: (variants,), or () for a scheme of plain numbers."""
+        parts = (part for leaf in leaves(self) for part in _numbers(leaf.value))
+        return np.broadcast_shapes(*(np.shape(part)[:-1] for part in parts))
+
+    @property
     def unit(self) -> Unit:
         """The sections that stand in the airstream."""
         return Unit(
@@ -147,6 +153,10 @@ def _rule_leaves(scheme: Scheme, path: str, rule: ScheduleRule) -> Iterator[Leaf
         origin = scheme.source.origins.get(f"{path}.{name}", "default")
         known = Setting(doc=f"{name} in which the rule applies")
         yield Leaf(path=f"{path}.{name}", setting=known, value=getattr(rule, name), origin=origin)
+
+
+def _numbers(value: Any) -> tuple[Any, ...]:
+    return value.values if isinstance(value, Setpoint) else (value,)
 
 
 def plain(value: Any) -> Any:

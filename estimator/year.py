@@ -350,7 +350,8 @@ def run_year(weather: WeatherYear, scheme: Scheme) -> Year:
         humidity_ratio=weather.humidity_ratio,
         pressure=weather.pressure,
     )
-    return run_hours(scheme, Hours(**calendar, outdoor=outdoor, mass_flow=flow), weather)
+    full = np.array(np.broadcast_to(flow, (*scheme.variants, weather.hours)))
+    return run_hours(scheme, Hours(**calendar, outdoor=outdoor, mass_flow=full), weather)
 
 
 def variant(year: Year, index: int, scheme: Scheme) -> Year:

@@ -169,10 +169,7 @@ class _Task:
     def __init__(self, coil: Coil, after: After, air: State, hours: Hours, request: Request) -> None:
         self.coil, self.after, self.air, self.request = coil, after, air, request
         self.flow = hours.mass_flow
-        parts = (air.enthalpy, request.humidity_ratio, request.high, self.flow, coil.bypass_factor)
-        sizes = (coil.least_surface_temperature, coil.capacity, coil.lockout_below)
-        shapes = [np.shape(x) for x in (*parts, *sizes) if x is not None]
-        self.shape = np.broadcast_shapes(*shapes)
+        self.shape = hours.mass_flow.shape
         self.t = np.array(np.broadcast_to(air.dry_bulb, self.shape), order="C")
         self.w = np.array(np.broadcast_to(air.humidity_ratio, self.shape), order="C")
         self.h = np.array(np.broadcast_to(air.enthalpy, self.shape), order="C")

@@ -63,7 +63,7 @@ class Hours:
     hour: NDArray[np.int64]
     weekday: NDArray[np.int64]
     outdoor: State
-    #: kg dry air/s; 0 where the unit is off
+    #: kg dry air/s, of the full shape (..., hours); 0 where the unit is off
     mass_flow: Array
 
     @property
