@@ -20,6 +20,7 @@ exceeds 1e-6 K.
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import dataclass
 from typing import Any, Final, TypeAlias
 
 import numpy as np
@@ -42,6 +43,7 @@ ArrayLike: TypeAlias = Array | float
 __all__ = [
     "Array",
     "ArrayLike",
+    "Mixture",
     "adiabatic_saturation_temperature",
     "dew_point",
     "dry_bulb_from_enthalpy",
@@ -262,6 +264,32 @@ def _enthalpy_terms(w: ArrayLike, p: ArrayLike) -> tuple[Array, Array, Array]:
     return np.asarray(a), np.asarray(b), np.asarray(c)
 
 
+@dataclass(frozen=True, slots=True, eq=False)
+class Mixture:
+    """Air of one humidity ratio and pressure at any temperature: ``h = a + b t + c t^2``.
+
+    Nothing here depends on temperature or enthalpy, so states that differ in nothing else share it.
+    """
+
+    a: Array
+    b: Array
+    c: Array
+
+    @classmethod
+    def of(cls, w: ArrayLike, p: ArrayLike) -> Mixture:
+        """The mixture of this humidity ratio, kg/kg, at this pressure, Pa."""
+        return cls(*_enthalpy_terms(w, p))
+
+    def enthalpy(self, t: ArrayLike) -> Array:
+        """Enthalpy at ``t``, kJ/kg."""
+        return np.asarray(self.a + t * (self.b + t * self.c))
+
+    def dry_bulb(self, h: ArrayLike) -> Array:
+        """Dry bulb, degC, at the enthalpy ``h``."""
+        above = h - self.a
+        return np.asarray(2.0 * above / (self.b + np.sqrt(self.b * self.b + 4.0 * self.c * above)))
+
+
 def enthalpy(t: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
     """Enthalpy of moist air, kJ per kg dry air.
 
@@ -323,7 +351,10 @@ def dew_point(w: ArrayLike, p: ArrayLike) -> Array:
     -12.3
     """
     e = vapour_pressure(w, p)
-    ice = np.asarray(e < _branch_pressure(TRIPLE_POINT, p, ice=False))
+    # air lifts the saturation pressure by less than a tenth, so far from it the pure water's decides
+    ice = np.asarray(e < _TRIPLE_PRESSURE)
+    if np.any(ice != (e < 1.1 * _TRIPLE_PRESSURE)):
+        ice = np.asarray(e < _branch_pressure(TRIPLE_POINT, p, ice=False))
     return _by_phase(ice, _branch_dew_point, e, p)
 
 
@@ -335,19 +366,22 @@ def _branch_dew_point(e: ArrayLike, p: ArrayLike, ice: bool) -> Array:
     magnus, offset = (22.46, 272.62) if ice else (17.62, 243.12)
     x = log_e - np.log(611.2)
     dry = np.isneginf(x)
-    x = np.where(dry, -5.0, x)
+    any_dry = dry.any()
+    if any_dry:
+        x = np.where(dry, -5.0, x)
     t = np.asarray(offset * x / (magnus - x))
-    residual = slope = np.ones_like(t)
+    correction = np.zeros_like(t)
     for step in range(_DEW_POINT_STEPS):
         kelvin = t + ZERO_CELSIUS
         log_pure = _log_pressure(kelvin, c)
-        found = log_pure + _log_enhancement(t, p, np.exp(log_pure), ice)
-        slope = _log_pressure_slope(kelvin, c)
-        residual = np.where(dry, 0.0, found - log_e)
+        residual = log_pure + _log_enhancement(t, p, np.exp(log_pure), ice) - log_e
+        correction = residual / _log_pressure_slope(kelvin, c)
+        if any_dry:
+            correction = np.where(dry, 0.0, correction)
         if step < _DEW_POINT_STEPS - 1:
-            t = t - residual / slope
-    _check_residual("dew point", residual / slope, e, p)
-    return np.where(dry, -np.inf, t)
+            t = t - correction
+    _check_residual("dew point", correction, e, p)
+    return np.where(dry, -np.inf, t) if any_dry else t
 
 
 def _saturation_curve(t: ArrayLike, p: ArrayLike, ice: bool) -> tuple[Array, Array]:

@@ -6,9 +6,11 @@ to the last digit.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
-from typing import Any, Final
+from itertools import pairwise
+from operator import itemgetter
+from typing import Any, Final, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
@@ -36,6 +38,18 @@ __all__ = [
 SeasonMap = Mapping[str, tuple[int, ...]]
 
 _MONTHS: Final = 12
+_COUNTS: Final = (
+    "hours_operating",
+    "hours_drying",
+    "hours_reheat",
+    "hours_frozen",
+    "hours_unmet",
+    "hours_unmet_dew_point",
+    "hours_unmet_warm",
+    "hours_unmet_cold",
+    *(f"mode {mode.words}" for mode in Mode),
+)
+_MODES: Final = tuple(mode.words for mode in Mode)
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -151,7 +165,7 @@ def _by_month(starts: NDArray[np.int64], values: Any) -> Array:
 
 
 def _starts(month: NDArray[np.int64]) -> NDArray[np.int64]:
-    starts = np.flatnonzero(np.diff(month, prepend=0))
+    starts = np.append(0, np.flatnonzero(month[1:] != month[:-1]) + 1)
     if not np.array_equal(month[starts], np.arange(1, _MONTHS + 1)):
         raise InputError("the hours do not run from January to December", where="weather")
     return starts
@@ -192,8 +206,11 @@ def monthly(year: Year) -> dict[str, Array]:
     sums = {name: _by_month(starts, _full(value, shape)) for name, value in powers.items()}
     for name, flag in flags.items():
         sums[name] = _by_month(starts, _full(flag, shape).astype(np.int64))
+    cells = (year.mode + len(Mode) * (year.hours.month - 1)).reshape(-1, shape[-1])
+    counts: Any = np.stack([np.bincount(row, minlength=_MONTHS * len(Mode)) for row in cells])
+    counts = counts.reshape(*shape[:-1], _MONTHS, len(Mode))
     for mode in Mode:
-        sums[f"mode {mode.words}"] = _by_month(starts, (year.mode == mode).astype(np.int64))
+        sums[f"mode {mode.words}"] = counts[..., mode]
     return sums
 
 
@@ -210,46 +227,67 @@ def _energy(year: Year, starts: NDArray[np.int64]) -> tuple[EnergyRow, ...]:
                 continue
             power = found[carrier, purpose]
             months = None if power is None else tuple(_by_month(starts, power).tolist())
-            rows.append(
-                EnergyRow(
-                    carrier=carrier,
-                    purpose=purpose,
-                    kwh=None if months is None else float(np.sum(months)),
-                    monthly_kwh=months,
-                )
-            )
+            kwh = None if months is None else float(np.add.accumulate(months)[-1])
+            rows.append(EnergyRow(carrier=carrier, purpose=purpose, kwh=kwh, monthly_kwh=months))
     return tuple(rows)
 
 
-def _carrier_sum(rows: tuple[EnergyRow, ...], carrier: str, months: list[int]) -> float | None:
-    total = 0.0
-    for row in rows:
-        if row.carrier == carrier:
-            if row.monthly_kwh is None:
-                return None
-            total += float(np.sum([row.monthly_kwh[m] for m in months]))
-    return total
+def _period(
+    sums: dict[str, Any],
+    counts: dict[str, Any],
+    energy: Iterable[tuple[EnergyRow, float]],
+    peaks: Peaks,
+) -> PeriodTotals:
+    carriers: dict[str, float | None] = dict.fromkeys(CARRIERS, 0.0)
+    spent = 0.0
+    for row, kwh in energy:
+        known = carriers[row.carrier]
+        carriers[row.carrier] = None if known is None or row.monthly_kwh is None else known + kwh
+        if row.purpose == "cooling":
+            spent += kwh
+    modes = {words: counts.pop(f"mode {words}") for words in _MODES}
+    return PeriodTotals(
+        **sums,
+        **counts,
+        coil_latent_kwh=sums["coil_cooling_kwh"] - sums["coil_sensible_kwh"],
+        reheat_recovered_kwh=0.0,
+        reheat_solar_kwh=0.0,
+        reheat_purchased_kwh=sums["reheat_kwh"],
+        cooling_undone_kwh=sums["cooling_undone_by_fan_kwh"] + sums["cooling_undone_by_purchased_kwh"],
+        electricity_kwh=carriers["electricity"],
+        fuel_kwh=carriers["fuel"],
+        heat_kwh=carriers["heat"],
+        moisture_removed_per_kwh_kg=sums["condensate_kg"] / spent if spent > 0.0 else None,
+        hours_by_mode=modes,
+        peaks=peaks,
+    )
 
 
-def _peaks(
-    year: Year, starts: NDArray[np.int64], ends: NDArray[np.int64]
-) -> list[dict[str, tuple[float, int]]]:
-    series = {"coil_cooling": year.coil_cooling, "reheat": year.reheat, "condensate": year.condensate}
+#: A month's highest value of each of ``_PEAKS`` and the name of its hour.
+_Peak: TypeAlias = list[tuple[float, str | None]]
+_PEAKS: Final = {
+    "coil_cooling": "coil_cooling_kw",
+    "reheat": "reheat_kw",
+    "condensate": "condensate_kg_per_h",
+}
+
+
+def _peaks(year: Year, starts: NDArray[np.int64]) -> list[_Peak]:
+    label = year.weather.label if year.weather is not None else str
+    series = [getattr(year, name) for name in _PEAKS]
+    bounds = [*starts.tolist(), year.hours.month.size]
     months = []
-    for start, end in zip(starts, ends, strict=True):
-        at = {name: int(start + np.argmax(values[start:end])) for name, values in series.items()}
-        months.append({name: (float(series[name][i]), i) for name, i in at.items()})
+    for start, end in pairwise(bounds):
+        at = [(values, start + int(values[start:end].argmax())) for values in series]
+        months.append([(float(values[i]), label(i) if values[i] > 0.0 else None) for values, i in at])
     return months
 
 
-def _peak(year: Year, months: list[dict[str, tuple[float, int]]]) -> Peaks:
-    label = year.weather.label if year.weather is not None else str
-    units = {"coil_cooling": "coil_cooling_kw", "reheat": "reheat_kw", "condensate": "condensate_kg_per_h"}
+def _highest(months: list[_Peak]) -> Peaks:
     fields: dict[str, Any] = {}
-    for name, key in units.items():
-        value, index = max((month[name] for month in months), key=lambda peak: (peak[0], -peak[1]))
-        fields[key] = value
-        fields[f"{name}_at"] = label(index) if value > 0.0 else None
+    for (name, key), values in zip(_PEAKS.items(), zip(*months, strict=True), strict=True):
+        # max keeps the first of equals
+        fields[key], fields[f"{name}_at"] = max(values, key=itemgetter(0))
     return Peaks(**fields)
 
 
@@ -274,51 +312,42 @@ def sum_year(year: Year, seasons: SeasonMap | None = None) -> Totals:
         seasons = seasons_by_latitude(year.weather.latitude if year.weather is not None else None)
     check_seasons(seasons)
     starts = _starts(year.hours.month)
-    ends = np.append(starts[1:], year.hours.month.size)
-    sums = {name: values.tolist() for name, values in monthly(year).items()}
+    found = monthly(year)
     rows = _energy(year, starts)
-    peaks = _peaks(year, starts, ends)
+    peaks = _peaks(year, starts)
+    every = range(1, _MONTHS + 1)
+    spans = [tuple(every), *seasons.values(), *((month,) for month in every)]
+    # months are added in the order of the calendar, so no digit depends on how a machine adds
+    within = np.array([[month in span for month in every] for span in spans])[..., None]
 
-    def period(months: tuple[int, ...]) -> PeriodTotals:
-        index = [month - 1 for month in sorted(months)]
-        return _period(sums, rows, _peak(year, [peaks[i] for i in index]), index)
+    def sums(columns: list[Any]) -> Any:
+        return np.where(within, np.column_stack(columns), 0).sum(axis=1).tolist()
 
+    flows = [name for name in found if name not in _COUNTS]
+    nothing = (0.0,) * _MONTHS
+    annual, *parts = (
+        _period(
+            dict(zip(flows, flow, strict=True)),
+            dict(zip(_COUNTS, count, strict=True)),
+            zip(rows, energy, strict=True),
+            _highest([peaks[month - 1] for month in sorted(span)]),
+        )
+        for span, flow, count, energy in zip(
+            spans,
+            sums([found[name] for name in flows]),
+            sums([found[name] for name in _COUNTS]),
+            sums([row.monthly_kwh or nothing for row in rows]),
+            strict=True,
+        )
+    )
     return Totals(
-        annual=period(tuple(range(1, _MONTHS + 1))),
-        seasons={name: period(months) for name, months in seasons.items()},
+        annual=annual,
+        seasons=dict(zip(seasons, parts, strict=False)),
         season_months=dict(seasons),
-        months=tuple(period((month,)) for month in range(1, _MONTHS + 1)),
+        months=tuple(parts[len(seasons) :]),
         energy=rows,
         heat_residual_max=float(year.heat_residual.max(initial=0.0)),
         water_residual_max=float(year.water_residual.max(initial=0.0)),
-    )
-
-
-def _period(
-    sums: dict[str, list[Any]], rows: tuple[EnergyRow, ...], peaks: Peaks, months: list[int]
-) -> PeriodTotals:
-    total = {name: sum(values[m] for m in months) for name, values in sums.items()}
-    modes = {mode.words: total.pop(f"mode {mode.words}") for mode in Mode}
-    carriers = {carrier: _carrier_sum(rows, carrier, months) for carrier in CARRIERS}
-    cooling = [row for row in rows if row.purpose == "cooling"]
-    spent = sum(
-        float(np.sum([row.monthly_kwh[m] for m in months])) for row in cooling if row.monthly_kwh is not None
-    )
-    removed = total["condensate_kg"] / spent if spent > 0.0 else None
-    undone = total["cooling_undone_by_fan_kwh"] + total["cooling_undone_by_purchased_kwh"]
-    return PeriodTotals(
-        **total,
-        coil_latent_kwh=total["coil_cooling_kwh"] - total["coil_sensible_kwh"],
-        reheat_recovered_kwh=0.0,
-        reheat_solar_kwh=0.0,
-        reheat_purchased_kwh=total["reheat_kwh"],
-        cooling_undone_kwh=undone,
-        electricity_kwh=carriers["electricity"],
-        fuel_kwh=carriers["fuel"],
-        heat_kwh=carriers["heat"],
-        moisture_removed_per_kwh_kg=removed,
-        hours_by_mode=modes,
-        peaks=peaks,
     )
 
 

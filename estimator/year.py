@@ -23,7 +23,7 @@ from estimator.airstream.order import Airstream, pass_air
 from estimator.airstream.state import Exchange, Flags, Hours, State
 from estimator.constants import BALANCE_TOLERANCE, SECONDS_PER_HOUR, UNMET_TOLERANCE
 from estimator.errors import BalanceError
-from estimator.moist_air import Array
+from estimator.moist_air import Array, Mixture
 from estimator.plant import bought
 from estimator.scheme import Scheme
 
@@ -109,7 +109,7 @@ class Year:
     def coil_sensible(self) -> Array:
         """Coil cooling of the dry bulb at the leaving humidity ratio, kW; the rest is latent."""
         before, after, _ = self._coil
-        at_entering = moist_air.enthalpy(before.dry_bulb, after.humidity_ratio, before.pressure)
+        at_entering = after.mixture.enthalpy(before.dry_bulb)
         return np.where(self.coil_cooling != 0.0, self.mass_flow * (at_entering - after.enthalpy), 0.0)
 
     @cached_property
@@ -177,8 +177,7 @@ class Year:
         names = list(self.airstream.points)
         coil_point = next(p.leaving for p in self.airstream.passages if p.exchange.device == "coil")
         outdoor = self.airstream.points["outdoor"].dry_bulb
-        w, p = behind.humidity_ratio, behind.pressure
-        ceiling = np.maximum(moist_air.enthalpy(outdoor, w, p), behind.enthalpy)
+        ceiling = np.maximum(behind.mixture.enthalpy(outdoor), behind.enthalpy)
         parts: dict[str, Array] = {}
         for passage in self.airstream.passages:
             if names.index(passage.leaving) <= names.index(coil_point):
@@ -200,22 +199,33 @@ class Year:
     def mode(self) -> NDArray[np.int64]:
         """The hour's mode, a ``Mode``."""
         heated = self.active_heat + self.preheat > 0.0
-        kinds = [~self.hours.running, self.drying & (self.reheat > 0.0), self.drying, self.cooling, heated]
-        names = [Mode.OFF, Mode.DRYING_WITH_REHEAT, Mode.DRYING, Mode.SENSIBLE_COOLING, Mode.HEATING]
-        return np.select(kinds, [int(n) for n in names], int(Mode.UNTREATED))
+        mode = np.full(self.coil_cooling.shape, int(Mode.UNTREATED))
+        # the later one governs
+        for where, kind in (
+            (heated, Mode.HEATING),
+            (self.cooling, Mode.SENSIBLE_COOLING),
+            (self.drying, Mode.DRYING),
+            (self.reheat > 0.0, Mode.DRYING_WITH_REHEAT),
+            (~self.hours.running, Mode.OFF),
+        ):
+            np.copyto(mode, int(kind), where=where)
+        return mode
 
     @cached_property
     def unmet(self) -> dict[str, Flags]:
         """Operating hours off target by more than 0.1 K: ``dew_point``, ``warm``, ``cold``."""
         wanted, supply, running = self.airstream.request, self.supply, self.hours.running
-        worst = moist_air.saturation_humidity_ratio(
-            np.asarray(wanted.dew_point) + UNMET_TOLERANCE, supply.pressure
-        )
         none = np.zeros(self.coil_cooling.shape, dtype=bool)
         high, low = wanted.high, wanted.low
         t = supply.dry_bulb
+        wet = running & (supply.humidity_ratio > wanted.humidity_ratio)
+        if wet.any():
+            worst = moist_air.saturation_humidity_ratio(
+                np.asarray(wanted.dew_point) + UNMET_TOLERANCE, supply.pressure
+            )
+            wet &= supply.humidity_ratio > worst
         return {
-            "dew_point": running & (supply.humidity_ratio > worst),
+            "dew_point": wet,
             "warm": none if high is None else running & (t > high + UNMET_TOLERANCE),
             "cold": none if low is None else running & (t < low - UNMET_TOLERANCE),
         }
@@ -282,7 +292,9 @@ def _balance(airstream: Airstream) -> tuple[Array, Array]:
     """Residuals of heat and water, with every enthalpy worked out anew from dry bulb and humidity ratio."""
     m = airstream.hours.mass_flow
     points = airstream.points
-    enthalpy = {n: moist_air.enthalpy(s.dry_bulb, s.humidity_ratio, s.pressure) for n, s in points.items()}
+    # by array, since devices that move no water hand on the very same humidity ratios
+    mixtures = {id(s.humidity_ratio): Mixture.of(s.humidity_ratio, s.pressure) for s in points.values()}
+    enthalpy = {name: mixtures[id(s.humidity_ratio)].enthalpy(s.dry_bulb) for name, s in points.items()}
     heat_scale = m * np.maximum(reduce(np.maximum, map(np.abs, enthalpy.values())), 1.0)
     water_scale = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
     whole_heat: Any = m * (enthalpy["supply"] - enthalpy["outdoor"])

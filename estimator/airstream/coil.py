@@ -23,9 +23,20 @@ from numpy.typing import NDArray
 
 from estimator import moist_air
 from estimator.airstream.solve import between
-from estimator.airstream.state import After, Exchange, Flags, Hours, Request, State, Step, Streams, pick
+from estimator.airstream.state import (
+    After,
+    Before,
+    Exchange,
+    Flags,
+    Hours,
+    Request,
+    State,
+    Step,
+    Streams,
+    pick,
+)
 from estimator.constants import TRIPLE_POINT
-from estimator.moist_air import Array, ArrayLike
+from estimator.moist_air import Array, ArrayLike, Mixture
 from estimator.settings import Settings, setting
 
 __all__ = ["Coil", "CoilDevice", "apparatus_dew_point", "leaving_state"]
@@ -137,22 +148,24 @@ class CoilDevice:
 
     coil: Coil
     after: After
+    before: Before
 
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """Every hour: as cold as the dew point or the dry bulb asks for, within what the coil can do."""
         air = entering.supply
-        task = _Task(self.coil, self.after, air, hours, request)
+        task = _Task(self.coil, self.after, self.before, air, hours, request)
         task.dry()
         task.cool()
         task.limit()
         leaving = task.leaving()
-        removed = hours.mass_flow * _specific_heat_removed(air, leaving)
+        h_w = moist_air.water_enthalpy(leaving.dry_bulb)
         water = hours.mass_flow * (air.humidity_ratio - leaving.humidity_ratio)
+        removed = hours.mass_flow * (air.enthalpy - leaving.enthalpy) - water * h_w
         exchange = Exchange(
             device="coil",
             heat=-removed,
             water=water,
-            water_enthalpy=moist_air.water_enthalpy(leaving.dry_bulb),
+            water_enthalpy=h_w,
             flags={
                 "at least surface temperature": task.held,
                 "at capacity": task.limited,
@@ -166,8 +179,13 @@ class CoilDevice:
 class _Task:
     """One pass over the hours: the leaving arrays, filled in place for the hours that each rule governs."""
 
-    def __init__(self, coil: Coil, after: After, air: State, hours: Hours, request: Request) -> None:
+    def __init__(
+        self, coil: Coil, after: After, before: Before, air: State, hours: Hours, request: Request
+    ) -> None:
         self.coil, self.after, self.air, self.request = coil, after, air, request
+        self.before = before
+        # of the leaving air, until its humidity ratio changes
+        self.mixture: Mixture | None = None
         self.flow = hours.mass_flow
         self.shape = hours.mass_flow.shape
         self.t = np.array(np.broadcast_to(air.dry_bulb, self.shape), order="C")
@@ -185,7 +203,10 @@ class _Task:
         self.allowed = np.broadcast_to(allowed, self.shape)
 
     def leaving(self) -> State:
-        return State(self.t, self.w, self.h, self.air.pressure)
+        state = State(self.t, self.w, self.h, self.air.pressure)
+        if self.mixture is None:
+            self.mixture = state.mixture
+        return state.knowing(self.mixture)
 
     def _take(self, index: NDArray[np.intp]) -> Callable[[Any], Any]:
         return pick(index, self.shape)
@@ -195,6 +216,7 @@ class _Task:
         return State(take(a.dry_bulb), take(a.humidity_ratio), take(a.enthalpy), take(a.pressure))
 
     def _put(self, index: NDArray[np.intp], state: State) -> None:
+        self.mixture = None
         for full, part in (
             (self.t, state.dry_bulb),
             (self.w, state.humidity_ratio),
@@ -205,32 +227,40 @@ class _Task:
     def dry(self) -> None:
         """Hours in which the dew point asks for the coil."""
         w1, w_set, p = self.air.humidity_ratio, self.request.humidity_ratio, self.air.pressure
-        w_least = moist_air.saturation_humidity_ratio(self.coil.least_surface_temperature, p)
-        index = np.flatnonzero(self.allowed & (w1 > w_set) & (w1 > w_least))
+        index = np.flatnonzero(self.allowed & (w1 > w_set))
         take = self._take(index)
-        bf, target = take(self.coil.bypass_factor), take(w_set)
-        surface = (target - bf * take(w1)) / (1.0 - bf)
-        reached = surface > take(w_least)
-        self._reach(index[reached], surface[reached])
-        self._hold(index[~reached])
+        bf = take(self.coil.bypass_factor)
+        surface = (take(w_set) - bf * take(w1)) / (1.0 - bf)
+        w_least = moist_air.saturation_humidity_ratio(take(self.coil.least_surface_temperature), take(p))
+        possible = take(w1) > w_least
+        if not possible.all():
+            index, surface, w_least = index[possible], surface[possible], w_least[possible]
+        reached = surface > w_least
+        if reached.all():
+            self._reach(index, surface)
+        else:
+            self._reach(index[reached], surface[reached])
+            self._hold(index[~reached])
 
     def _reach(self, index: NDArray[np.intp], w_surface: Array) -> None:
         """The leaving air has exactly the humidity ratio asked for."""
+        if index.size == 0:
+            return
         take = self._take(index)
-        entering, p = self._entering(take), take(self.air.pressure)
+        p, w = take(self.air.pressure), np.asarray(take(self.request.humidity_ratio))
         adp = moist_air.dew_point(w_surface, p)
         h_surface = moist_air.enthalpy(adp, w_surface, p)
-        h = h_surface + take(self.coil.bypass_factor) * (entering.enthalpy - h_surface)
-        w = np.asarray(take(self.request.humidity_ratio))
-        t = moist_air.dry_bulb_from_enthalpy(h, w, p)
+        h = h_surface + take(self.coil.bypass_factor) * (take(self.air.enthalpy) - h_surface)
         # below its own dew point the mixture is fog: a slightly warmer surface leaves it just saturated
-        saturated = t < take(self.request.dew_point)
-        t = np.where(saturated, take(self.request.dew_point), t)
-        h = np.where(saturated, moist_air.enthalpy(t, w, p), h)
+        mixture, saturated = Mixture.of(w, p), take(self.request.dew_point)
+        h = np.maximum(h, mixture.enthalpy(saturated))
+        t = np.maximum(mixture.dry_bulb(h), saturated)
         self._put(index, State(t, w, h, p))
 
     def _hold(self, index: NDArray[np.intp]) -> None:
         """The surface is as cold as it may be."""
+        if index.size == 0:
+            return
         take = self._take(index)
         entering = self._entering(take)
         least = np.minimum(take(self.coil.least_surface_temperature), entering.dry_bulb)
@@ -242,8 +272,12 @@ class _Task:
         high = self.request.high
         if high is None:
             return
-        supply = self.after(self.leaving(), lambda full: full)
-        index = np.flatnonzero(self.allowed & ~self.held & (supply.dry_bulb > high + _DRY_BULB_TOLERANCE))
+        behind = self.leaving()
+        limit = self.before(high, behind, lambda full: full)
+        index = np.flatnonzero(self.allowed & ~self.held & (behind.enthalpy > limit + _DRY_BULB_TOLERANCE))
+        index = self._cool_dry(index, limit)
+        if index.size == 0:
+            return
         take = self._take(index)
         entering, bf, target = self._entering(take), take(self.coil.bypass_factor), take(high)
         least = np.minimum(take(self.coil.least_surface_temperature), entering.dry_bulb)
@@ -266,6 +300,21 @@ class _Task:
             "coil surface for the supply dry bulb",
         )
         self._put(index[within], leaving_state(surface, _part(entering, sub), sub(bf)))
+
+    def _cool_dry(self, index: NDArray[np.intp], limit: Array) -> NDArray[np.intp]:
+        """Hours in which a dry surface makes the air leave at ``limit``, kJ/kg; returns the others."""
+        take = self._take(index)
+        entering, bf = self._entering(take), take(self.coil.bypass_factor)
+        h, w = take(limit), entering.humidity_ratio
+        surface = entering.mixture.dry_bulb((h - bf * entering.enthalpy) / (1.0 - bf))
+        dry = (take(self.w) == w) & (surface >= take(self.coil.least_surface_temperature))
+        # nothing condenses where the surface could hold more water than the air has
+        least = np.where(dry, surface, take(self.coil.least_surface_temperature))
+        dry &= moist_air.saturation_humidity_ratio(least, entering.pressure) >= w
+        done = index[dry]
+        self.h.reshape(-1)[done] = h[dry]
+        self.t.reshape(-1)[done] = entering.mixture.dry_bulb(h)[dry]
+        return np.asarray(index[~dry])
 
     def limit(self) -> None:
         """Hours that ask for more than the total cooling capacity: dew point and dry bulb rise together."""

@@ -92,6 +92,11 @@ class FanDevice:
         part = FanDevice(_picked(self.fan, take), take(self.standard_density))
         return state.heated(part.heat_to_air(state.humidity_ratio))
 
+    def before(self, dry_bulb: ArrayLike, state: State, take: Any) -> Any:
+        """Enthalpy before the fan, kJ/kg, of air that is at ``dry_bulb`` behind it (see ``state.Before``)."""
+        part = FanDevice(_picked(self.fan, take), take(self.standard_density))
+        return state.mixture.enthalpy(dry_bulb) - part.heat_to_air(state.humidity_ratio)
+
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """All hours in which the unit runs."""
         air = entering.supply

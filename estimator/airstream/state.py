@@ -8,20 +8,32 @@ from __future__ import annotations
 
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
+from functools import cached_property
 from typing import Any, Protocol, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 
-from estimator import moist_air
-from estimator.moist_air import Array, ArrayLike
+from estimator.moist_air import Array, ArrayLike, Mixture
 
-__all__ = ["After", "Device", "Exchange", "Flags", "Hours", "Request", "State", "Step", "Streams", "pick"]
+__all__ = [
+    "After",
+    "Before",
+    "Device",
+    "Exchange",
+    "Flags",
+    "Hours",
+    "Request",
+    "State",
+    "Step",
+    "Streams",
+    "pick",
+]
 
 Flags: TypeAlias = NDArray[np.bool_]
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class State:
     """Moist air at a point: dry bulb degC, humidity ratio kg/kg, enthalpy kJ/kg, pressure Pa."""
 
@@ -33,18 +45,29 @@ class State:
     @classmethod
     def of(cls, dry_bulb: Array, humidity_ratio: Array, pressure: Array) -> State:
         """The state of this dry bulb and humidity ratio."""
-        h = moist_air.enthalpy(dry_bulb, humidity_ratio, pressure)
-        return cls(dry_bulb, humidity_ratio, h, pressure)
+        mixture = Mixture.of(humidity_ratio, pressure)
+        state = cls(dry_bulb, humidity_ratio, mixture.enthalpy(dry_bulb), pressure)
+        return state.knowing(mixture)
+
+    def knowing(self, mixture: Mixture) -> State:
+        """The same state, which need not work out ``mixture`` again."""
+        self.__dict__["mixture"] = mixture
+        return self
+
+    @cached_property
+    def mixture(self) -> Mixture:
+        """The air of this state at any temperature."""
+        return Mixture.of(self.humidity_ratio, self.pressure)
 
     def heated(self, heat: ArrayLike) -> State:
         """The state after ``heat``, kJ per kg dry air, at the same humidity ratio."""
         h = self.enthalpy + heat
-        t = moist_air.dry_bulb_from_enthalpy(h, self.humidity_ratio, self.pressure)
-        return State(t, self.humidity_ratio, h, self.pressure)
+        state = State(self.mixture.dry_bulb(h), self.humidity_ratio, h, self.pressure)
+        return state.knowing(self.mixture)
 
     def heat_to(self, dry_bulb: ArrayLike) -> Array:
         """Heat, kJ per kg dry air, that brings the air to ``dry_bulb`` (negative: cooling without water)."""
-        return moist_air.enthalpy(dry_bulb, self.humidity_ratio, self.pressure) - self.enthalpy
+        return self.mixture.enthalpy(dry_bulb) - self.enthalpy
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -116,6 +139,10 @@ class Step:
 #: the hours (and variants) in question out of arrays of the full shape.
 After: TypeAlias = Callable[[State, Callable[[Any], Any]], State]
 
+#: The enthalpy, kJ/kg, that leaves the coil when the air behind those devices is at a given dry bulb; the
+#: state gives humidity ratio and pressure.
+Before: TypeAlias = Callable[[ArrayLike, State, Callable[[Any], Any]], Array]
+
 
 class Device(Protocol):
     """A device: frozen settings, and a pure function of what enters it."""
@@ -134,6 +161,7 @@ def pick(index: NDArray[np.intp], shape: tuple[int, ...]) -> Callable[[Any], Any
     def take(value: Any) -> Any:
         if np.ndim(value) == 0:
             return value
-        return np.broadcast_to(value, shape).reshape(-1)[index]
+        full = value if value.shape == shape else np.broadcast_to(value, shape)
+        return full.reshape(-1)[index]
 
     return take
