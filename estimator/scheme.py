@@ -5,6 +5,7 @@ from __future__ import annotations
 import dataclasses
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
+from functools import cached_property
 from typing import Any, Literal
 
 import numpy as np
@@ -88,7 +89,7 @@ class Scheme:
                     f"reheat source {name!r} stands twice", where="reheat", allowed="each source once"
                 )
 
-    @property
+    @cached_property
     def variants(self) -> tuple[int, ...]:
         """The leading axis of a stack: (variants,), or () for a scheme of plain numbers."""
         parts = (part for leaf in leaves(self) for part in _numbers(leaf.value))

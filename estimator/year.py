@@ -289,34 +289,35 @@ class Year:
 
 
 def _balance(airstream: Airstream) -> tuple[Array, Array]:
-    """Residuals of heat and water, with every enthalpy worked out anew from dry bulb and humidity ratio."""
-    m = airstream.hours.mass_flow
-    points = airstream.points
+    """Residuals of heat and water, with every enthalpy worked out anew from dry bulb and humidity ratio.
+
+    The residual of the whole is the sum of those of its devices.
+    """
+    m, points = airstream.hours.mass_flow, airstream.points
     # by array, since devices that move no water hand on the very same humidity ratios
     mixtures = {id(s.humidity_ratio): Mixture.of(s.humidity_ratio, s.pressure) for s in points.values()}
     enthalpy = {name: mixtures[id(s.humidity_ratio)].enthalpy(s.dry_bulb) for name, s in points.items()}
-    heat_scale = m * np.maximum(reduce(np.maximum, map(np.abs, enthalpy.values())), 1.0)
-    water_scale = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
-    whole_heat: Any = m * (enthalpy["supply"] - enthalpy["outdoor"])
-    whole_water: Any = m * (points["supply"].humidity_ratio - points["outdoor"].humidity_ratio)
-    heat_worst: Any = 0.0
-    water_worst: Any = 0.0
+    heat_residuals, water_residuals = [], []
     for passage in airstream.passages:
         exchange = passage.exchange
-        gained = m * (enthalpy[passage.leaving] - enthalpy[passage.entering]) - exchange.heat
-        whole_heat = whole_heat - exchange.heat
-        water: Any = 0.0
+        heat = m * (enthalpy[passage.leaving] - enthalpy[passage.entering]) - exchange.heat
         if exchange.water is not None and exchange.water_enthalpy is not None:
-            water = exchange.water
-            carried = exchange.water * exchange.water_enthalpy
-            gained, whole_heat, whole_water = gained + carried, whole_heat + carried, whole_water + water
-        w_in, w_out = (points[n].humidity_ratio for n in (passage.entering, passage.leaving))
-        heat_worst = np.maximum(heat_worst, np.abs(gained))
-        if w_in is not w_out:
-            water_worst = np.maximum(water_worst, np.abs(m * (w_out - w_in) + water))
-    heat = np.maximum(heat_worst, np.abs(whole_heat)) / np.where(m > 0.0, heat_scale, 1.0)
-    water_share = np.maximum(water_worst, np.abs(whole_water)) / np.where(m > 0.0, water_scale, 1.0)
-    return heat, water_share
+            heat += exchange.water * exchange.water_enthalpy
+            w_in, w_out = (points[name].humidity_ratio for name in (passage.entering, passage.leaving))
+            water_residuals.append(m * (w_out - w_in) + exchange.water)
+        heat_residuals.append(heat)
+    ends = np.maximum(np.abs(enthalpy["outdoor"]), np.abs(enthalpy["supply"]))
+    heat_passing = m * np.maximum(ends, 1.0)
+    water_passing = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
+    return _share(heat_residuals, heat_passing), _share(water_residuals, water_passing)
+
+
+def _share(residuals: list[Array], passing: Array) -> Array:
+    """The largest of the residuals and of their sum, as a share of what passes; 0 where nothing does."""
+    worst = reduce(np.maximum, map(np.abs, residuals), np.zeros_like(passing))
+    if len(residuals) > 1:
+        worst = np.maximum(worst, np.abs(sum(residuals)))
+    return np.asarray(worst / np.maximum(passing, np.finfo(float).tiny))
 
 
 def run_hours(scheme: Scheme, hours: Hours, weather: WeatherYear | None = None) -> Year:
