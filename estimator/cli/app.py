@@ -10,7 +10,7 @@ from typing import Annotated, Any, Final
 import typer
 from typer.core import TyperGroup
 
-from estimator.cli import hour, scheme, weather, year
+from estimator.cli import demo, hour, scheme, weather, year
 from estimator.cli.options import examples, require_command
 from estimator.cli.output import tell
 from estimator.errors import CalculationError, InputError
@@ -90,16 +90,17 @@ def _unknown(kind: str, shown: str, name: str, known: list[str]) -> str:
 app = typer.Typer(
     name="dewledger",
     cls=Commands,
-    add_completion=False,
+    add_completion=True,
     rich_markup_mode=None,
     pretty_exceptions_enable=False,
     context_settings={"help_option_names": ["--help", "-h"]},
 )
 
 EXAMPLES: Final = examples(
+    "dewledger demo",
+    "dewledger weather sablewick-bay",
+    "dewledger year sablewick-bay --scheme boiler-reheat",
     "dewledger scheme new my-scheme.toml",
-    "dewledger weather site.epw",
-    "dewledger year site.epw --scheme my-scheme.toml",
 )
 
 
@@ -127,6 +128,7 @@ def dewledger(
     require_command(context)
 
 
+app.command("demo", epilog=demo.EXAMPLES)(demo.demo)
 app.command("weather", epilog=weather.EXAMPLES)(weather.weather)
 app.command("year", epilog=year.EXAMPLES)(year.year)
 app.command("hour", epilog=hour.EXAMPLES)(hour.hour)

@@ -6,19 +6,24 @@ from typing import TYPE_CHECKING, Annotated, Final
 
 import typer
 
+from estimator.cli.asked import scheme_asked
 from estimator.cli.options import (
+    Airflow,
+    DewPoint,
+    DryBulb,
     FirstWeekday,
     Humidity,
     Json,
     MaxGap,
     NoCache,
+    Quiet,
     SchemeName,
     Set,
     UnitOption,
     UtcOffset,
     examples,
-    settings_given,
     unit_system,
+    weather_completion,
     weather_options,
     weekday_number,
 )
@@ -33,17 +38,25 @@ if TYPE_CHECKING:
 __all__ = ["EXAMPLES", "hour"]
 
 EXAMPLES: Final = examples(
-    'dewledger hour site.epw --scheme my-scheme.toml --at "07-14 15:00"',
-    'dewledger hour site.epw --scheme my-scheme.toml --design "dew point 0.4 %"',
-    'dewledger hour --scheme my-scheme.toml --air "32 degC, 65 %, 101.3 kPa"',
+    'dewledger hour sablewick-bay --scheme starter --at "07-14 15:00"',
+    'dewledger hour millbrandt -s boiler-reheat --design "dew point 0.4 %"',
+    'dewledger hour --airflow 5000cfm --air "90 degF, 65 %, 14.7 psi" --units ip',
 )
 
 
 def hour(
-    scheme: SchemeName,
     file: Annotated[
-        str | None, typer.Argument(metavar="FILE", help="A weather file: EPW, TMY3 or TMY2. Not with --air.")
+        str | None,
+        typer.Argument(
+            metavar="FILE",
+            autocompletion=weather_completion,
+            help="A weather file (EPW, TMY3 or TMY2), or the name of a sample. Not with --air.",
+        ),
     ] = None,
+    scheme: SchemeName = None,
+    airflow: Airflow = None,
+    dew_point: DewPoint = None,
+    dry_bulb: DryBulb = None,
     at: Annotated[
         str | None,
         typer.Option(
@@ -73,6 +86,7 @@ def hour(
     set_: Set = None,
     units: UnitOption = "si",
     json: Json = None,
+    quiet: Quiet = False,
     humidity: Humidity = "dew-point",
     max_gap: MaxGap = "6",
     utc_offset: UtcOffset = None,
@@ -83,14 +97,15 @@ def hour(
 
     Every state point, every exchange between them, and the arithmetic behind each.
     """
-    from estimator.scheme_file import load_scheme
+    from estimator.samples import weather_path
 
     system = unit_system(units)
     _check_choice(file, at, air, design)
-    with writing({"--json": json}, [path for path in (file, scheme) if path is not None]) as streams:
-        model = load_scheme(scheme, settings_given(set_))
+    path = None if file is None else weather_path(file)
+    with writing({"--json": json}, (path or "", scheme or "")) as streams:
+        model = scheme_asked("hour", scheme, set_, airflow, dew_point, dry_bulb)
         weather: WeatherYear | None = None
-        if file is None:
+        if path is None:
             from estimator.cli.air import air_given
 
             outdoor = air_given(str(air), at, weekday_number(first_weekday))
@@ -99,7 +114,7 @@ def hour(
             from estimator.weather import read_weather
 
             weather = read_weather(
-                file, weather_options(humidity, max_gap, utc_offset, first_weekday, no_cache)
+                path, weather_options(humidity, max_gap, utc_offset, first_weekday, no_cache)
             )
             outdoor = air_of_design(weather, design) if design is not None else air_at(weather, str(at))
         result = _run(model, outdoor)
@@ -107,10 +122,14 @@ def hour(
             from estimator.report.documents import dumps, hour_document
 
             streams["--json"].write(dumps(hour_document(result, weather)))
-    if json != CONSOLE:
+    if json != CONSOLE and not quiet:
         from estimator.report.hour import hour_page
 
         say(hour_page(result, system))
+        if scheme is None:
+            from estimator.report.assumed import assumed_page
+
+            say(assumed_page(model, system))
 
 
 def _check_choice(file: str | None, at: str | None, air: str | None, design: str | None) -> None:

@@ -15,19 +15,25 @@ if TYPE_CHECKING:
     from estimator.weather import WeatherOptions
 
 __all__ = [
+    "Airflow",
+    "DewPoint",
+    "DryBulb",
     "FirstWeekday",
     "Humidity",
     "Json",
     "MaxGap",
     "NoCache",
+    "Quiet",
     "SchemeName",
     "Set",
     "UnitOption",
     "UtcOffset",
     "examples",
     "require_command",
+    "scheme_completion",
     "settings_given",
     "unit_system",
+    "weather_completion",
     "weather_options",
     "weekday_number",
 ]
@@ -42,13 +48,35 @@ _NAMES: Final = {
 }
 
 
+def scheme_completion(incomplete: str) -> list[str]:
+    """The bundled schemes that begin so; where none does, the shell offers files."""
+    from estimator.scheme_file import bundled_schemes
+
+    return [name for name in bundled_schemes() if name.startswith(incomplete)]
+
+
+def weather_completion(incomplete: str) -> list[str]:
+    """The samples that begin so; where none does, the shell offers files."""
+    from estimator.samples import sample_names
+
+    return [name for name in sample_names() if name.startswith(incomplete)]
+
+
+def unit_completion(incomplete: str) -> list[str]:
+    """The unit systems that begin so."""
+    return [name for name in ("si", "ip") if name.startswith(incomplete)]
+
+
 # Words and numbers are taken as text and read here, so that what cannot be read is told in the same words
 # whatever the version of typer.
 
 UnitOption = Annotated[
     str,
     typer.Option(
-        "--units", metavar="si|ip", help="Units of the text: SI or inch-pound. JSON and CSV are always SI."
+        "--units",
+        metavar="si|ip",
+        autocompletion=unit_completion,
+        help="Units of the text: SI or inch-pound. JSON and CSV are always SI.",
     ),
 ]
 Json = Annotated[
@@ -56,7 +84,38 @@ Json = Annotated[
     typer.Option("--json", metavar="PATH", help="Write the result as JSON; '-' is standard output."),
 ]
 SchemeName = Annotated[
-    str, typer.Option("--scheme", "-s", metavar="S", help="A scheme file, or the name of a bundled scheme.")
+    str | None,
+    typer.Option(
+        "--scheme",
+        "-s",
+        metavar="S",
+        autocompletion=scheme_completion,
+        help="A scheme file, or the name of a bundled scheme. In its place any of the next three options may "
+        "stand; all other settings are then the starter's, and listed as assumed.",
+    ),
+]
+Airflow = Annotated[
+    str | None,
+    typer.Option(
+        "--airflow", metavar="FLOW", help="Outdoor air: '2.5 m3/s' or '5000 cfm'. Overrides the scheme."
+    ),
+]
+DewPoint = Annotated[
+    str | None,
+    typer.Option(
+        "--dew-point",
+        metavar="T",
+        help="Highest dew point of the supply air: '11 degC'. Overrides the scheme.",
+    ),
+]
+DryBulb = Annotated[
+    str | None,
+    typer.Option(
+        "--dry-bulb", metavar="T", help="Dry bulb of the supply air: '20 degC'. Overrides the scheme."
+    ),
+]
+Quiet = Annotated[
+    bool, typer.Option("--quiet", "-q", help="Print no page; files that are asked for are written.")
 ]
 Set = Annotated[
     list[str] | None,
@@ -102,7 +161,10 @@ NoCache = Annotated[
 
 
 def examples(*lines: str) -> str:
-    """The end of a help page: commands as they are typed, each on a line of its own."""
+    """The end of a help page: commands as they are typed, each on a line of its own.
+
+    Each runs as it stands, in an empty folder.
+    """
     return "\n".join(["\b", "Examples:", *(f"  {line}" for line in lines)])
 
 

@@ -14,10 +14,12 @@ from typing import IO, Final
 
 from estimator.errors import InputError
 
-__all__ = ["CONSOLE", "check_outputs", "prepare_console", "say", "tell", "writing"]
+__all__ = ["CONSOLE", "check_outputs", "prepare_console", "progress", "say", "tell", "writing"]
 
 #: The path that stands for standard output.
 CONSOLE: Final = "-"
+#: A line of a terminal that the next one takes the place of.
+_LINE: Final = "\r{:<78.78}"
 #: How a pipe that the reader has closed shows itself; the second is what Windows says.
 _CLOSED: Final = (errno.EPIPE, errno.EINVAL)
 
@@ -46,6 +48,25 @@ def tell(message: str) -> None:
     """Write a message to standard error."""
     sys.stderr.write(_shown(f"dewledger: {message}\n"))
     sys.stderr.flush()
+
+
+@contextmanager
+def progress() -> Iterator[Callable[[str], None]]:
+    """A line on standard error that says how far a run is: at a terminal only, and gone when it ends."""
+    if not sys.stderr.isatty():
+        yield lambda _text: None
+        return
+
+    def advance(text: str) -> None:
+        sys.stderr.write(_LINE.format(_shown(text)))
+        sys.stderr.flush()
+
+    try:
+        yield advance
+    finally:
+        advance("")
+        sys.stderr.write("\r")
+        sys.stderr.flush()
 
 
 def _shown(text: str) -> str:

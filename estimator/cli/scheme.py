@@ -13,6 +13,7 @@ from estimator.cli.options import (
     UnitOption,
     examples,
     require_command,
+    scheme_completion,
     settings_given,
     unit_system,
 )
@@ -27,7 +28,9 @@ app = typer.Typer(
 )
 
 
-@app.callback(invoke_without_command=True)
+@app.callback(
+    epilog=examples("dewledger scheme list", "dewledger scheme show starter"), invoke_without_command=True
+)
 def scheme(context: typer.Context) -> None:
     """Write, list and show schemes: ways of treating outdoor air."""
     require_command(context)
@@ -72,13 +75,18 @@ def list_() -> None:
 @app.command(
     "show",
     epilog=examples(
-        "dewledger scheme show my-scheme.toml",
+        "dewledger scheme show boiler-reheat",
         'dewledger scheme show starter --set "fan.total_pressure=4 inH2O" --units ip',
     ),
 )
 def show(
     file: Annotated[
-        str, typer.Argument(metavar="FILE", help="A scheme file, or the name of a bundled scheme.")
+        str,
+        typer.Argument(
+            metavar="FILE",
+            autocompletion=scheme_completion,
+            help="A scheme file, or the name of a bundled scheme.",
+        ),
     ],
     set_: Set = None,
     units: UnitOption = "si",

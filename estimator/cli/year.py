@@ -6,22 +6,27 @@ from typing import TYPE_CHECKING, Annotated, Final
 
 import typer
 
+from estimator.cli.asked import scheme_asked
 from estimator.cli.options import (
+    Airflow,
+    DewPoint,
+    DryBulb,
     FirstWeekday,
     Humidity,
     Json,
     MaxGap,
     NoCache,
+    Quiet,
     SchemeName,
     Set,
     UnitOption,
     UtcOffset,
     examples,
-    settings_given,
     unit_system,
+    weather_completion,
     weather_options,
 )
-from estimator.cli.output import CONSOLE, say, writing
+from estimator.cli.output import CONSOLE, say, tell, writing
 
 if TYPE_CHECKING:
     from io import StringIO
@@ -31,15 +36,26 @@ if TYPE_CHECKING:
 __all__ = ["EXAMPLES", "year"]
 
 EXAMPLES: Final = examples(
-    "dewledger year site.epw --scheme my-scheme.toml",
-    "dewledger year site.epw -s my-scheme.toml --json year.json --hours hours.csv",
-    "dewledger year site.epw -s starter --set coil.bypass_factor=0.1 --units ip",
+    "dewledger year sablewick-bay --scheme boiler-reheat",
+    "dewledger year ondavari --airflow 10000cfm --dew-point 52degF --units ip",
+    "dewledger year millbrandt -s starter --set coil.bypass_factor=0.1",
+    "dewledger year cape-wendle -s cold-supply --json year.json --hours hours.csv",
 )
 
 
 def year(
-    file: Annotated[str, typer.Argument(metavar="FILE", help="A weather file: EPW, TMY3 or TMY2.")],
-    scheme: SchemeName,
+    file: Annotated[
+        str,
+        typer.Argument(
+            metavar="FILE",
+            autocompletion=weather_completion,
+            help="A weather file (EPW, TMY3 or TMY2), or the name of a sample.",
+        ),
+    ],
+    scheme: SchemeName = None,
+    airflow: Airflow = None,
+    dew_point: DewPoint = None,
+    dry_bulb: DryBulb = None,
     units: UnitOption = "si",
     json: Json = None,
     hours: Annotated[
@@ -59,7 +75,7 @@ def year(
         ),
     ] = None,
     set_: Set = None,
-    quiet: Annotated[bool, typer.Option("--quiet", "-q", help="Print no summary.")] = False,
+    quiet: Quiet = False,
     humidity: Humidity = "dew-point",
     max_gap: MaxGap = "6",
     utc_offset: UtcOffset = None,
@@ -71,22 +87,32 @@ def year(
     The summary has the year, its seasons and months, peaks, hours by mode, hours off target, the cooling that
     reheat undoes, bought energy, and everything that a reader must know to trust it or not.
     """
+    from estimator.report.assumed import assumed_page, with_caution
     from estimator.result import evaluate
-    from estimator.scheme_file import load_scheme
+    from estimator.samples import weather_path
     from estimator.totals import parse_seasons
     from estimator.weather import read_weather
 
     system = unit_system(units)
     options = weather_options(humidity, max_gap, utc_offset, first_weekday, no_cache)
     own_seasons = None if seasons is None else parse_seasons(seasons)
-    with writing({"--json": json, "--hours": hours}, (file, scheme)) as streams:
-        model = load_scheme(scheme, settings_given(set_))
-        result = evaluate(read_weather(file, options), model, own_seasons)
+    path = weather_path(file)
+    with writing({"--json": json, "--hours": hours}, (path, scheme or "")) as streams:
+        model = scheme_asked("year", scheme, set_, airflow, dew_point, dry_bulb)
+        result = evaluate(read_weather(path, options), model, own_seasons)
+        if scheme is None:
+            result = with_caution(result)
         _write(result, streams)
-    if not quiet and CONSOLE not in (json, hours):
+    if quiet:
+        return
+    if CONSOLE not in (json, hours):
         from estimator.report.summary import year_page
 
         say(year_page(result, system))
+        if scheme is None:
+            say(assumed_page(model, system))
+    elif scheme is None:
+        tell(result.cautions[0])
 
 
 def _write(result: YearResult, streams: dict[str, StringIO]) -> None:

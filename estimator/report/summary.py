@@ -280,6 +280,6 @@ def _settings(result: YearResult, system: UnitSystem) -> list[str]:
             groups["not set"].append(leaf.path)
         elif leaf.origin == "default":
             groups["default"].append(f"{leaf.path} = {text}")
-    titles = {"command": "By --set", "default": "Defaults", "not set": "Not set"}
+    titles = {"command": "By command", "default": "Defaults", "not set": "Not set"}
     rows = [(titles[group], ", ".join(items)) for group, items in groups.items() if items]
-    return [*pairs(rows), *paragraph("All other settings are those of the scheme file.")]
+    return [*pairs(rows), *paragraph("All other settings stand in the scheme.")]

@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import os
+import re
+import shlex
 import subprocess
 import sys
 from pathlib import Path
@@ -13,6 +15,7 @@ import estimator
 from estimator.errors import BalanceError
 
 COMMANDS = (
+    ("demo",),
     ("weather",),
     ("year",),
     ("hour",),
@@ -63,7 +66,9 @@ def test_help_names_every_command_and_the_exit_status(dewledger):
     text = dewledger("--help").stdout
     assert all(f"\n  {command[0]} " in text for command in COMMANDS)
     assert "Exit status: 0 done; 1 done, but something asked for fails; 2" in text
-    assert "dewledger year site.epw --scheme my-scheme.toml" in text
+    assert "dewledger year sablewick-bay --scheme boiler-reheat" in text
+    # each command says what it is for within its line
+    assert "..." not in text.partition("\nCommands:\n")[2]
 
 
 @pytest.mark.parametrize("command", COMMANDS, ids=" ".join)
@@ -87,7 +92,9 @@ def test_help_has_no_colour_codes_and_no_boxes(dewledger):
         (("yeer", "x"), ("no such command 'yeer'", "did you mean 'year'?")),
         (("scheme", "shw"), ("no such command 'shw'", "did you mean 'show'?", "dewledger scheme --help")),
         (("year", "--schme", "x"), ("no such option --schme", "did you mean '--scheme'?")),
-        (("year", "x.epw"), ("missing option '--scheme'", "'dewledger year --help'")),
+        (("year", "x.epw", "--airflw", "3"), ("no such option --airflw", "did you mean '--airflow'?")),
+        (("dmo",), ("no such command 'dmo'", "did you mean 'demo'?", "dewledger --help")),
+        (("demo", "--unit", "ip"), ("no such option --unit", "did you mean '--units'?")),
         (("year", "--scheme", "starter"), ("missing argument 'FILE'", "'dewledger year --help'")),
         (("--nonsense",), ("no such option --nonsense",)),
         (("weather", "a", "--json"), ("--json", "argument")),
@@ -98,6 +105,46 @@ def test_a_command_line_that_cannot_be_read_is_told_in_one_line(refused, argumen
     message = refused(*arguments)
     assert message.count("\n") == 1
     assert all(word in message for word in words), message
+
+
+def commands_of(group, way: tuple[str, ...] = ()) -> list[tuple[str, ...]]:
+    """The program itself, its groups and its commands, each by the words that call it."""
+    below = getattr(group, "commands", {})
+    return [way, *(found for name, inner in below.items() for found in commands_of(inner, (*way, name)))]
+
+
+def every_command() -> list[tuple[str, ...]]:
+    import typer
+
+    from estimator.cli.app import app
+
+    return commands_of(typer.main.get_command(app))
+
+
+def test_the_commands_here_are_all_there_are():
+    assert {command for command in every_command() if command not in {(), ("scheme",)}} == set(COMMANDS)
+
+
+def examples_in(text: str) -> list[str]:
+    return re.findall(r"^    (dewledger .*)$", text.rpartition("\n  Examples:\n")[2], re.MULTILINE)
+
+
+@pytest.mark.parametrize("command", every_command(), ids=lambda words: " ".join(words) or "dewledger")
+def test_every_example_of_a_help_page_runs_as_printed_in_an_empty_folder(
+    dewledger, tmp_path, monkeypatch, command
+):
+    text = dewledger(*command, "--help").stdout
+    examples = examples_in(text)
+    assert examples
+    assert text.rstrip().endswith(examples[-1]), "examples end the page"
+    for number, example in enumerate(examples):
+        folder = tmp_path / str(number)
+        folder.mkdir()
+        monkeypatch.chdir(folder)
+        program, *arguments = shlex.split(example)
+        assert (program, tuple(arguments[: len(command)])) == ("dewledger", command)
+        result = dewledger(*arguments)
+        assert result.exit_code == 0, (example, result.stderr)
 
 
 @pytest.mark.parametrize("arguments", [(), ("scheme",)])
@@ -147,6 +194,51 @@ def test_a_disk_that_is_full_is_told_and_leaves_nothing(dewledger, years, monkey
     assert (result.exit_code, result.stdout) == (2, "")
     assert "No space left on device" in result.stderr
     assert not list(Path().iterdir())
+
+
+# completion
+
+
+def completed(shell: str, line: str, home: Path) -> list[str]:
+    """What a shell is offered for the last word of a line."""
+    environment = {"_DEWLEDGER_COMPLETE": f"complete_{shell}", "DEWLEDGER_HOME": str(home)}
+    if shell == "bash":
+        environment |= {"COMP_WORDS": line, "COMP_CWORD": str(line.count(" "))}
+    else:
+        environment |= {"_TYPER_COMPLETE_ARGS": line, "_TYPER_COMPLETE_FISH_ACTION": "get-args"}
+    run = process(env=environment, cwd=home)
+    assert run.stderr == b""
+    return run.stdout.decode().split()
+
+
+@pytest.mark.parametrize(
+    ("line", "expected"),
+    [
+        ("dewledger ho", {"hour"}),
+        ("dewledger scheme sh", {"show"}),
+        ("dewledger year --dew", {"--dew-point"}),
+        ("dewledger year sa", {"sablewick-bay"}),
+        ("dewledger weather ondavari ca", {"cape-wendle"}),
+        ("dewledger hour x --scheme boil", {"boiler-reheat"}),
+        ("dewledger scheme show sta", {"starter"}),
+        ("dewledger demo --units i", {"ip"}),
+        # nothing of ours begins so, and the shell offers files
+        ("dewledger year my-own", set()),
+    ],
+)
+def test_completion_offers_commands_options_and_names(home, line, expected):
+    assert set(completed("bash", line, home)) == expected
+
+
+def test_completion_in_other_shells(home):
+    assert "sablewick-bay" in " ".join(completed("zsh", "dewledger year sa", home))
+    assert completed("fish", "dewledger year sa", home) == ["sablewick-bay"]
+
+
+def test_completion_can_be_shown_and_installed(dewledger):
+    text = dewledger("--help").stdout
+    assert "--install-completion" in text
+    assert "--show-completion" in text
 
 
 # in a process of its own

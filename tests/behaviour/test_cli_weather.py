@@ -120,6 +120,15 @@ def test_the_cache_is_used_left_alone_and_cleared(dewledger, tmp_path, monkeypat
     assert result.stderr.startswith("dewledger: 1 ")
 
 
+def test_quiet_prints_nothing_and_still_tells_what_fails(dewledger, years, tmp_path):
+    result = dewledger("weather", years["humid"], "--quiet", "--json", "w.json")
+    assert (result.exit_code, result.stdout, result.stderr) == (0, "", "")
+    assert json.loads((tmp_path / "w.json").read_text(encoding="utf-8"))["weather"]
+    result = dewledger("weather", years["humid"], "nowhere.epw", "-q")
+    assert (result.exit_code, result.stdout) == (2, "")
+    assert "nowhere.epw: no such file" in result.stderr
+
+
 def test_a_leap_year_has_its_hours(dewledger, tmp_path):
     (tmp_path / "leap.epw").write_bytes(wf.epw(wf.epw_rows(wf.Year(leap=True, years=(2004,) * 12))))
     assert "8 784 hours" in dewledger("weather", "leap.epw").stdout
@@ -128,7 +137,8 @@ def test_a_leap_year_has_its_hours(dewledger, tmp_path):
 @pytest.mark.parametrize(
     ("arguments", "words"),
     [
-        ((), ("no weather file is named",)),
+        (("--json", "w.json"), ("no weather file is named",)),
+        (("FILE", "--units", "metric", "-q"), ("--units: 'metric'",)),
         (("FILE", "--units", "metric"), ("--units: 'metric'", "si or ip")),
         (("FILE", "--max-gap", "99"), ("--max-gap: 99", "0..48")),
         (("FILE", "--max-gap", "some"), ("--max-gap: 'some' is not a number",)),

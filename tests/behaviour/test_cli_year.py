@@ -313,7 +313,7 @@ def test_the_summary_says_where_everything_comes_from(dewledger, years, busy):
         document["scheme"]["file_sha256"][:12],
         document["scheme"]["resolved_sha256"][:12],
         f"dewledger {document['tool']['version']}",
-        "By --set coil.bypass_factor = 0.1",
+        "By command coil.bypass_factor = 0.1",
         "fan.motor_efficiency = 0.9",
         "coil.least_surface_temperature = 1 degC",
         "1 January is a Monday",

@@ -21,6 +21,7 @@ MODULES = {
 LINES = [
     {"cli"},
     {"report"},
+    {"demo"},
     {"result"},
     {"hour", "pricing", "totals"},
     {"year"},
@@ -28,6 +29,7 @@ LINES = [
     {"scheme"},
     {"plant", "airstream"},
     {"settings", "weather"},
+    {"samples"},
     {"quantities", "moist_air"},
     {"files"},
     {"constants", "errors"},
