@@ -35,4 +35,7 @@ BALANCE_TOLERANCE: Final = 1e-9
 #: Largest error of an inverse of a moist-air property, K.
 TEMPERATURE_TOLERANCE: Final = 1e-6
 
+#: Heat below this is what root finding leaves over, kJ per kg dry air: a millionth of a kelvin.
+NEGLIGIBLE_HEAT: Final = 1e-6
+
 SECONDS_PER_HOUR: Final = 3600.0

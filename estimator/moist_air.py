@@ -253,17 +253,6 @@ def specific_volume(t: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
     return np.asarray(GAS_CONSTANT_DRY_AIR * kelvin * (1.0 + w / MOLE_MASS_RATIO) / p)
 
 
-def _enthalpy_terms(w: ArrayLike, p: ArrayLike) -> tuple[Array, Array, Array]:
-    """The coefficients of ``h = a + b t + c t^2`` for air of this humidity ratio and pressure."""
-    q = p / STANDARD_PRESSURE
-    over = q - 1.0
-    qw = q * w
-    a = w * _B0 + _C0 * over + qw * (_D0 + _E0 * w)
-    b = _A1 + _C1 * over + w * (_B1 + _E1 * qw)
-    c = _A2 + _C2 * over
-    return np.asarray(a), np.asarray(b), np.asarray(c)
-
-
 @dataclass(frozen=True, slots=True, eq=False)
 class Mixture:
     """Air of one humidity ratio and pressure at any temperature: ``h = a + b t + c t^2``.
@@ -278,7 +267,13 @@ class Mixture:
     @classmethod
     def of(cls, w: ArrayLike, p: ArrayLike) -> Mixture:
         """The mixture of this humidity ratio, kg/kg, at this pressure, Pa."""
-        return cls(*_enthalpy_terms(w, p))
+        q = p / STANDARD_PRESSURE
+        over = q - 1.0
+        qw = q * w
+        a = w * _B0 + _C0 * over + qw * (_D0 + _E0 * w)
+        b = _A1 + _C1 * over + w * (_B1 + _E1 * qw)
+        c = _A2 + _C2 * over
+        return cls(np.asarray(a), np.asarray(b), np.asarray(c))
 
     def enthalpy(self, t: ArrayLike) -> Array:
         """Enthalpy at ``t``, kJ/kg."""
@@ -299,8 +294,7 @@ def enthalpy(t: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
     >>> round(float(enthalpy(30.0, 0.027333, 101325.0)), 1)
     100.0
     """
-    a, b, c = _enthalpy_terms(w, p)
-    return np.asarray(a + t * (b + t * c))
+    return Mixture.of(w, p).enthalpy(t)
 
 
 def dry_bulb_from_enthalpy(h: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
@@ -309,9 +303,7 @@ def dry_bulb_from_enthalpy(h: ArrayLike, w: ArrayLike, p: ArrayLike) -> Array:
     >>> round(float(dry_bulb_from_enthalpy(enthalpy(31.7, 0.012, 9e4), 0.012, 9e4)), 9)
     31.7
     """
-    a, b, c = _enthalpy_terms(w, p)
-    above = h - a
-    return np.asarray(2.0 * above / (b + np.sqrt(b * b + 4.0 * c * above)))
+    return Mixture.of(w, p).dry_bulb(h)
 
 
 def liquid_water_enthalpy(t: ArrayLike) -> Array:

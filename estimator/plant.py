@@ -7,11 +7,18 @@ from typing import Any, Final
 
 from estimator.settings import Settings, setting
 
-__all__ = ["CARRIERS", "PURPOSES", "Plant", "bought"]
+__all__ = ["CARRIERS", "CARRIER_OF", "PURPOSES", "USUAL_EFFICIENCY", "Plant", "bought"]
 
 #: What is bought, and what for; the rows of the energy table.
 CARRIERS: Final = ("electricity", "fuel", "heat")
 PURPOSES: Final = ("cooling", "reheat", "outdoor-air heating", "preheat", "fans", "pumps")
+
+#: Sources of bought heat, and the carrier each draws on.
+CARRIER_OF: Final = {"electric": "electricity", "boiler": "fuel", "district": "heat"}
+
+#: Delivered heat over what is bought, where a scheme does not say: common practice (a non-condensing
+#: boiler in seasonal use; electric and district heat as delivered).
+USUAL_EFFICIENCY: Final = {"electric": 1.0, "boiler": 0.85, "district": 1.0}
 
 
 @dataclass(frozen=True, kw_only=True)

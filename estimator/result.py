@@ -6,6 +6,7 @@ Every renderer (terminal, JSON, CSV) works from this and from nothing else.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Final
 
 import numpy as np
 
@@ -16,7 +17,16 @@ from estimator.totals import SeasonMap, Totals, sum_year
 from estimator.weather.model import WeatherYear
 from estimator.year import Year, run_year
 
-__all__ = ["YearResult", "evaluate"]
+__all__ = ["NOT_MODELLED", "YearResult", "evaluate"]
+
+
+#: Said in every output that it touches.
+NOT_MODELLED: Final = (
+    "Each hour is a steady state: humidification, water re-evaporating from a cycling coil while the fan "
+    "runs, duct gains and control dead bands are not modelled.",
+    "Condensate leaves at the coil's leaving dry bulb, by convention. Station pressure holds throughout the "
+    "unit: the fan's own pressure is left out of the air's state.",
+)
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -49,11 +59,7 @@ def evaluate(weather: WeatherYear, scheme: Scheme, seasons: SeasonMap | None = N
 
 def _notes(year: Year, sums: Totals) -> tuple[str, ...]:
     scheme, weather = year.scheme, year.weather
-    notes = [
-        "Each hour is a steady state: humidification, water re-evaporating from a cycling coil while the fan "
-        "runs, duct gains and control dead bands are not modelled.",
-        "Condensate leaves at the coil's leaving dry bulb, by convention.",
-    ]
+    notes = list(NOT_MODELLED)
     if weather is not None:
         if weather.calendar == "typical" and scheme.airflow.schedule:
             notes.append(
@@ -63,7 +69,7 @@ def _notes(year: Year, sums: Totals) -> tuple[str, ...]:
     if scheme.airflow.basis == "standard":
         notes.append(
             f"Airflow is at standard density, {scheme.airflow.standard_density:g} kg dry air per m3: "
-            "the mass of air is the same in every hour."
+            "at full flow the mass of air is the same in every hour."
         )
     if scheme.airflow.schedule and scheme.fan is not None:
         notes.append(
@@ -82,7 +88,13 @@ def _notes(year: Year, sums: Totals) -> tuple[str, ...]:
         )
     locked = int(np.count_nonzero(year.coil_flags["locked out"]))
     if locked:
-        notes.append(f"The coil is locked out in {_hours(locked)}.")
+        missed = year.coil_flags["locked out"] & (year.unmet["dew_point"] | year.unmet["warm"])
+        notes.append(
+            f"The coil is locked out in {_hours(locked)}, of which {_hours(int(np.count_nonzero(missed)))} "
+            "miss a target for it."
+        )
+    if scheme.fan is None:
+        notes.append("The scheme has no fan: neither its electricity nor its heat is counted.")
     return tuple(notes)
 
 
@@ -113,6 +125,11 @@ def _cautions(year: Year, sums: Totals) -> tuple[str, ...]:
         cautions.append(
             f"The supply misses a target in {_hours(sums.annual.hours_unmet)}; energy of a scheme that "
             "does less is not comparable."
+        )
+    if sums.annual.preheat_while_cooling_kwh:
+        heat = QUANTITIES["electricity"].show(sums.annual.preheat_while_cooling_kwh)
+        cautions.append(
+            f"The coil takes out again {heat} of preheat: the preheat's dry bulb is high for this coil."
         )
     if sums.annual.hours_frozen:
         cautions.append(

@@ -174,7 +174,8 @@ def resolved_sha256(scheme: Scheme) -> str:
 
     The name is not part of it, nor is the origin of a setting.
     """
-    return sha256(canonical_json({leaf.path: plain(leaf.value) for leaf in leaves(scheme)}))
+    # a list, since the order of the reheat sources means something
+    return sha256(canonical_json([[leaf.path, plain(leaf.value)] for leaf in leaves(scheme)]))
 
 
 def stack(schemes: Sequence[Scheme]) -> Scheme:
@@ -183,40 +184,61 @@ def stack(schemes: Sequence[Scheme]) -> Scheme:
     Raises
     ------
     SchemeError
-        The schemes differ in more than numbers: in their devices, words or kinds of setpoint.
+        The schemes differ in more than numbers: in their devices, words, schedules or kinds of setpoint.
     """
     if not schemes:
         raise SchemeError("no scheme to stack", allowed="at least one")
-    sources = {f.name: getattr(schemes[0], f.name) for f in dataclasses.fields(Scheme)}
-    for name in sources:
-        if name in ("name", "source"):
-            continue
-        sources[name] = _stacked(name, [getattr(scheme, name) for scheme in schemes])
-    return Scheme(**sources)
+    parts = {
+        part.name: _stacked(part.name, [getattr(scheme, part.name) for scheme in schemes])
+        for part in dataclasses.fields(Scheme)
+        if part.name not in ("name", "source")
+    }
+    return Scheme(name=schemes[0].name, source=schemes[0].source, **parts)
 
 
 def _stacked(path: str, values: list[Any]) -> Any:
+    """One section, or a list of sections, with its differing numbers stacked."""
     first = values[0]
-    if all(_same(value, first) for value in values):
+    if all(value == first for value in values):
         return first
-    if all(isinstance(value, int | float) and not isinstance(value, bool) for value in values):
-        return np.array(values, dtype=float)[:, None]
-    same_kind = all(type(value) is type(first) for value in values)
-    if same_kind and dataclasses.is_dataclass(first):
-        parts = {
-            f.name: _stacked(f"{path}.{f.name}", [getattr(value, f.name) for value in values])
-            for f in dataclasses.fields(first)
-        }
-        kind: Any = type(first)
-        return kind(**parts)
-    if same_kind and isinstance(first, tuple) and len({len(value) for value in values}) == 1:
-        return tuple(
-            _stacked(f"{path}.{i}", list(items)) for i, items in enumerate(zip(*values, strict=True), 1)
+    if all(isinstance(value, tuple) for value in values) and len({len(value) for value in values}) == 1:
+        items = enumerate(zip(*values, strict=True), 1)
+        return tuple(_stacked(f"{path}.{number}", list(item)) for number, item in items)
+    if not isinstance(first, Settings) or len({type(value) for value in values}) > 1:
+        raise _differ(path)
+    kind: Any = type(first)
+    known = dict(settings_of(kind))
+    parts: dict[str, Any] = {}
+    for name in kind.__dataclass_fields__:
+        each, place = [getattr(value, name) for value in values], f"{path}.{name}"
+        if name in known and known[name].quantity is not None:
+            parts[name] = _stacked_numbers(place, each)
+        elif name == "schedule":
+            parts[name] = _stacked(place, each)
+        elif any(value != each[0] for value in each):
+            raise _differ(place)
+        else:
+            parts[name] = each[0]
+    return kind(**parts)
+
+
+def _stacked_numbers(path: str, values: list[Any]) -> Any:
+    first = values[0]
+    if all(value == first for value in values):
+        return first
+    if all(isinstance(value, Setpoint) for value in values):
+        if any(v.outdoor != first.outdoor or len(v.values) != len(first.values) for v in values):
+            raise _differ(path)
+        nodes = zip(*(value.values for value in values), strict=True)
+        return Setpoint(
+            values=tuple(_stacked_numbers(path, list(node)) for node in nodes), outdoor=first.outdoor
         )
-    raise SchemeError(
+    if not all(isinstance(value, int | float) for value in values):
+        raise _differ(path)
+    return np.array(values, dtype=float)[:, None]
+
+
+def _differ(path: str) -> SchemeError:
+    return SchemeError(
         "the schemes differ in more than a number", where=path, allowed="schemes of one shape in a stack"
     )
-
-
-def _same(value: Any, other: Any) -> bool:
-    return type(value) is type(other) and bool(value == other)

@@ -9,7 +9,7 @@ from __future__ import annotations
 import copy
 import dataclasses
 import tomllib
-from collections.abc import Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping
 from importlib import resources
 from pathlib import Path
 from typing import Any, Final
@@ -19,6 +19,7 @@ from estimator.airstream.coil import Coil
 from estimator.airstream.fan import Fan
 from estimator.airstream.heat import Preheat, ReheatSource
 from estimator.airstream.supply import Supply
+from estimator.calendar_words import names_to_days, names_to_months
 from estimator.errors import InputError, SchemeError
 from estimator.files import sha256
 from estimator.plant import Plant
@@ -29,7 +30,6 @@ from estimator.settings import REQUIRED, Setpoint, Setting, settings_of
 __all__ = [
     "bundled_schemes",
     "load_scheme",
-    "names_to_months",
     "parse_scheme",
     "read_scheme_text",
     "starter_text",
@@ -49,22 +49,6 @@ _SECTIONS: Final[dict[str, type]] = {
 #: Sections that a scheme has even if its file does not name them.
 _ALWAYS: Final = ("coil", "plant", "prices", "carbon")
 _MOST_BYTES: Final = 1_000_000
-
-_DAYS: Final = ("monday", "tuesday", "wednesday", "thursday", "friday", "saturday", "sunday")
-_MONTHS: Final = (
-    "january",
-    "february",
-    "march",
-    "april",
-    "may",
-    "june",
-    "july",
-    "august",
-    "september",
-    "october",
-    "november",
-    "december",
-)
 
 
 def bundled_schemes() -> dict[str, str]:
@@ -375,12 +359,12 @@ class _Reader:
         return self.section("airflow", Airflow, table, {"schedule": tuple(rules)})
 
     def _rule(self, path: str, table: dict[str, Any]) -> Any:
-        readers = (("days", _DAYS, 0), ("months", _MONTHS, 1))
+        readers = (("days", names_to_days), ("months", names_to_months))
         ready: dict[str, Any] = {}
-        for key, names, first in readers:
+        for key, read in readers:
             if key in table:
                 self._origin(f"{path}.{key}")
-                ready[key] = self._names(f"{path}.{key}", names, first, table[key])
+                ready[key] = self._names(f"{path}.{key}", read, table[key])
         if "hours" in table:
             self._origin(f"{path}.hours")
             ready["hours"] = self._clock(f"{path}.hours", table["hours"])
@@ -388,9 +372,9 @@ class _Reader:
             ready.setdefault(key, ScheduleRule.__dataclass_fields__[key].default)
         return self.section(path, ScheduleRule, table, ready)
 
-    def _names(self, place: str, names: tuple[str, ...], first: int, given: Any) -> tuple[int, ...]:
+    def _names(self, place: str, read: Callable[[Any], tuple[int, ...]], given: Any) -> tuple[int, ...]:
         try:
-            return names_to_numbers(given, names, first)
+            return read(given)
         except InputError as error:
             self.problems.append(error.at(place))
             return ()
@@ -451,35 +435,6 @@ _OUTDOOR: Final = Setting(
     least=-60.0,
     most=60.0,
 )
-
-
-def names_to_numbers(given: Any, names: tuple[str, ...], first: int) -> tuple[int, ...]:
-    """Numbers of the days or months in ``"mon..fri"``, ``"sat"`` or ``["jan", "jul"]``; spans may wrap."""
-    short = [name[:3] for name in names]
-    allowed = f"{', '.join(short)}, a span such as '{short[0]}..{short[4]}', or a list of them"
-
-    def index(word: Any) -> int:
-        folded = word.strip().lower() if isinstance(word, str) else ""
-        for known in (short, names):
-            if folded in known:
-                return known.index(folded)
-        raise SchemeError(f"{word!r} is not known", allowed=allowed)
-
-    items = given if isinstance(given, list) else [given]
-    found: set[int] = set()
-    for item in items:
-        start, dots, end = item.partition("..") if isinstance(item, str) else (item, "", "")
-        a = index(start)
-        b = index(end) if dots else a
-        found.update((a + i) % len(names) + first for i in range((b - a) % len(names) + 1))
-    if not found:
-        raise SchemeError("is empty", allowed=allowed)
-    return tuple(sorted(found))
-
-
-def names_to_months(given: Any) -> tuple[int, ...]:
-    """Months, 1 to 12, by name: ``"may..oct"`` or ``["jan", "jul"]``; spans may wrap around the year."""
-    return names_to_numbers(given, _MONTHS, 1)
 
 
 def _full_hour(text: str) -> int:

@@ -15,10 +15,10 @@ from typing import Any, Final, TypeAlias
 import numpy as np
 from numpy.typing import NDArray
 
+from estimator.calendar_words import names_to_months
 from estimator.errors import InputError
 from estimator.moist_air import Array
 from estimator.plant import CARRIERS, PURPOSES
-from estimator.scheme_file import names_to_months
 from estimator.year import Mode, Year
 
 __all__ = [
@@ -83,6 +83,7 @@ class PeriodTotals:
     cooling_undone_by_purchased_kwh: float
     outdoor_air_heating_kwh: float
     preheat_kwh: float
+    preheat_while_cooling_kwh: float
     condensate_kg: float
     condensate_frozen_kg: float
     fan_kwh: float
@@ -184,10 +185,15 @@ def monthly(year: Year) -> dict[str, Array]:
         "coil_cooling_kwh": year.coil_cooling,
         "coil_sensible_kwh": year.coil_sensible,
         "reheat_kwh": year.reheat,
+        "reheat_recovered_kwh": year.reheat_by.get("recovered", zero),
+        "reheat_solar_kwh": year.reheat_by.get("solar", zero),
+        "reheat_purchased_kwh": year.reheat_by.get("purchased", zero),
+        "cooling_undone_kwh": year.cooling_undone,
         "cooling_undone_by_fan_kwh": undone.get("fan", zero),
         "cooling_undone_by_purchased_kwh": undone.get("purchased", zero),
         "outdoor_air_heating_kwh": year.outdoor_air_heating,
         "preheat_kwh": year.preheat,
+        "preheat_while_cooling_kwh": year.preheat_while_cooling,
         "condensate_kg": year.condensate,
         "condensate_frozen_kg": np.where(year.frozen, year.condensate, 0.0),
         "fan_kwh": year.fan_power,
@@ -250,10 +256,6 @@ def _period(
         **sums,
         **counts,
         coil_latent_kwh=sums["coil_cooling_kwh"] - sums["coil_sensible_kwh"],
-        reheat_recovered_kwh=0.0,
-        reheat_solar_kwh=0.0,
-        reheat_purchased_kwh=sums["reheat_kwh"],
-        cooling_undone_kwh=sums["cooling_undone_by_fan_kwh"] + sums["cooling_undone_by_purchased_kwh"],
         electricity_kwh=carriers["electricity"],
         fuel_kwh=carriers["fuel"],
         heat_kwh=carriers["heat"],

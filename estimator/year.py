@@ -8,10 +8,11 @@ everything else is worked out when it is asked for.
 from __future__ import annotations
 
 import dataclasses
+from collections.abc import Mapping
 from dataclasses import dataclass
 from enum import IntEnum
 from functools import cached_property, reduce
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, Final
 
 import numpy as np
 from numpy.typing import NDArray
@@ -20,17 +21,20 @@ from estimator import moist_air
 from estimator.airstream.airflow import mass_flow
 from estimator.airstream.coil import apparatus_dew_point
 from estimator.airstream.order import Airstream, pass_air
-from estimator.airstream.state import Exchange, Flags, Hours, State
+from estimator.airstream.state import Exchange, Flags, Hours, Kind, State
 from estimator.constants import BALANCE_TOLERANCE, SECONDS_PER_HOUR, UNMET_TOLERANCE
 from estimator.errors import BalanceError
 from estimator.moist_air import Array, Mixture
-from estimator.plant import bought
+from estimator.plant import CARRIER_OF, bought
 from estimator.scheme import Scheme
 
 if TYPE_CHECKING:
     from estimator.weather.model import WeatherYear
 
 __all__ = ["Energy", "Mode", "Year", "run_hours", "run_year"]
+
+
+_ACTIVE: Final[tuple[Kind, ...]] = ("recovered", "solar", "purchased")
 
 
 class Mode(IntEnum):
@@ -137,15 +141,15 @@ class Year:
     @cached_property
     def active_heat(self) -> Array:
         """Heat of all sources after the coil, kW."""
-        return self._sum("reheat.")
+        return self._sum(*_ACTIVE)
 
     @cached_property
     def preheat(self) -> Array:
         """Heat of the preheat, kW."""
         return self._sum("preheat")
 
-    def _sum(self, prefix: str) -> Array:
-        parts = [p.exchange.heat for p in self.airstream.passages if p.exchange.device.startswith(prefix)]
+    def _sum(self, *kinds: Kind) -> Array:
+        parts = [p.exchange.heat for p in self.airstream.passages if p.exchange.kind in kinds]
         return np.asarray(sum(parts)) if parts else np.zeros_like(self.coil_cooling)
 
     @cached_property
@@ -154,9 +158,20 @@ class Year:
         return np.where(self.drying, self.active_heat, 0.0)
 
     @cached_property
+    def reheat_by(self) -> dict[Kind, Array]:
+        """Reheat, kW, by the class of its sources, of those classes that the scheme has."""
+        present = {p.exchange.kind for p in self.airstream.passages}
+        return {kind: np.where(self.drying, self._sum(kind), 0.0) for kind in _ACTIVE if kind in present}
+
+    @cached_property
     def outdoor_air_heating(self) -> Array:
         """Heat added, preheat included, in hours in which the coil does not run, kW."""
         return np.where(self.cooling, 0.0, self.active_heat + self.preheat)
+
+    @cached_property
+    def preheat_while_cooling(self) -> Array:
+        """Preheat in hours in which the coil runs, kW: heat that the coil takes out again."""
+        return np.where(self.cooling, self.preheat, 0.0)
 
     @cached_property
     def fan_power(self) -> Array:
@@ -167,7 +182,7 @@ class Year:
         return fan.power
 
     @cached_property
-    def cooling_undone_by(self) -> dict[str, Array]:
+    def cooling_undone_by(self) -> dict[Kind, Array]:
         """Cooling undone, kW, by what supplied the heat: ``fan`` and the active sources' class.
 
         The air is brought back from the coil's leaving dry bulb up to at most the outdoor dry bulb. Each
@@ -178,13 +193,13 @@ class Year:
         coil_point = next(p.leaving for p in self.airstream.passages if p.exchange.device == "coil")
         outdoor = self.airstream.points["outdoor"].dry_bulb
         ceiling = np.maximum(behind.mixture.enthalpy(outdoor), behind.enthalpy)
-        parts: dict[str, Array] = {}
+        parts: dict[Kind, Array] = {}
         for passage in self.airstream.passages:
             if names.index(passage.leaving) <= names.index(coil_point):
                 continue
             before, after = (self.airstream.points[n].enthalpy for n in (passage.entering, passage.leaving))
             share = np.minimum(after, ceiling) - np.minimum(before, ceiling)
-            kind = "fan" if passage.exchange.device == "fan" else "purchased"
+            kind = passage.exchange.kind
             heat = np.where(self.cooling, self.mass_flow * np.maximum(share, 0.0), 0.0)
             parts[kind] = parts[kind] + heat if kind in parts else heat
         return parts
@@ -248,8 +263,6 @@ class Year:
     @cached_property
     def energy(self) -> tuple[Energy, ...]:
         """Bought energy by carrier and purpose."""
-        from estimator.airstream.heat import CARRIER_OF
-
         rows: dict[tuple[str, str], Array | None] = {}
 
         def add(carrier: str, purpose: str, power: Array | None) -> None:
@@ -291,24 +304,32 @@ class Year:
 def _balance(airstream: Airstream) -> tuple[Array, Array]:
     """Residuals of heat and water, with every enthalpy worked out anew from dry bulb and humidity ratio.
 
-    The residual of the whole is the sum of those of its devices.
+    Each device starts where the one before it ended, so what the whole gains from outdoor to supply is the
+    sum of what its devices gain, and the residual of the whole the sum of theirs.
     """
     m, points = airstream.hours.mass_flow, airstream.points
     # by array, since devices that move no water hand on the very same humidity ratios
     mixtures = {id(s.humidity_ratio): Mixture.of(s.humidity_ratio, s.pressure) for s in points.values()}
     enthalpy = {name: mixtures[id(s.humidity_ratio)].enthalpy(s.dry_bulb) for name, s in points.items()}
+
+    def gain(values: Mapping[str, Array], entering: str, leaving: str) -> Array:
+        return m * (values[leaving] - values[entering])
+
+    humidity = {name: state.humidity_ratio for name, state in points.items()}
     heat_residuals, water_residuals = [], []
     for passage in airstream.passages:
-        exchange = passage.exchange
-        heat = m * (enthalpy[passage.leaving] - enthalpy[passage.entering]) - exchange.heat
+        exchange, way = passage.exchange, (passage.entering, passage.leaving)
+        heat = gain(enthalpy, *way) - exchange.heat
         if exchange.water is not None and exchange.water_enthalpy is not None:
-            heat += exchange.water * exchange.water_enthalpy
-            w_in, w_out = (points[name].humidity_ratio for name in (passage.entering, passage.leaving))
-            water_residuals.append(m * (w_out - w_in) + exchange.water)
+            heat = heat + exchange.water * exchange.water_enthalpy
         heat_residuals.append(heat)
+        if exchange.water is not None:
+            water_residuals.append(gain(humidity, *way) + exchange.water)
+        elif humidity[way[0]] is not humidity[way[1]]:
+            water_residuals.append(gain(humidity, *way))
     ends = np.maximum(np.abs(enthalpy["outdoor"]), np.abs(enthalpy["supply"]))
     heat_passing = m * np.maximum(ends, 1.0)
-    water_passing = m * np.maximum(points["outdoor"].humidity_ratio, 1e-6)
+    water_passing = m * np.maximum(humidity["outdoor"], 1e-6)
     return _share(heat_residuals, heat_passing), _share(water_residuals, water_passing)
 
 

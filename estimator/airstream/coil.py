@@ -24,7 +24,6 @@ from numpy.typing import NDArray
 from estimator import moist_air
 from estimator.airstream.solve import between
 from estimator.airstream.state import (
-    After,
     Before,
     Exchange,
     Flags,
@@ -41,7 +40,7 @@ from estimator.settings import Settings, setting
 
 __all__ = ["Coil", "CoilDevice", "apparatus_dew_point", "leaving_state"]
 
-#: How near the solved dry bulb and capacity come, K and kJ/kg.
+#: How near the solved dry bulb and capacity come, kJ/kg (a kelvin being about one).
 _DRY_BULB_TOLERANCE: Final = 1e-9
 _CAPACITY_TOLERANCE: Final = 1e-9
 
@@ -142,18 +141,17 @@ def apparatus_dew_point(entering: State, leaving: State, bypass_factor: ArrayLik
 class CoilDevice:
     """The coil at its place in the airstream.
 
-    ``after`` says what the passive devices downstream make of the leaving air, since the supply dry bulb is
-    judged behind them.
+    ``before`` says what must leave the coil for a dry bulb behind the passive devices downstream, since the
+    supply dry bulb is judged there.
     """
 
     coil: Coil
-    after: After
     before: Before
 
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """Every hour: as cold as the dew point or the dry bulb asks for, within what the coil can do."""
         air = entering.supply
-        task = _Task(self.coil, self.after, self.before, air, hours, request)
+        task = _Task(self.coil, self.before, air, hours, request)
         task.dry()
         task.cool()
         task.limit()
@@ -163,6 +161,7 @@ class CoilDevice:
         removed = hours.mass_flow * (air.enthalpy - leaving.enthalpy) - water * h_w
         exchange = Exchange(
             device="coil",
+            kind="coil",
             heat=-removed,
             water=water,
             water_enthalpy=h_w,
@@ -179,11 +178,8 @@ class CoilDevice:
 class _Task:
     """One pass over the hours: the leaving arrays, filled in place for the hours that each rule governs."""
 
-    def __init__(
-        self, coil: Coil, after: After, before: Before, air: State, hours: Hours, request: Request
-    ) -> None:
-        self.coil, self.after, self.air, self.request = coil, after, air, request
-        self.before = before
+    def __init__(self, coil: Coil, before: Before, air: State, hours: Hours, request: Request) -> None:
+        self.coil, self.before, self.air, self.request = coil, before, air, request
         # of the leaving air, until its humidity ratio changes
         self.mixture: Mixture | None = None
         self.flow = hours.mass_flow
@@ -240,7 +236,7 @@ class _Task:
             self._reach(index, surface)
         else:
             self._reach(index[reached], surface[reached])
-            self._hold(index[~reached])
+            self._hold_or_drain(index[~reached])
 
     def _reach(self, index: NDArray[np.intp], w_surface: Array) -> None:
         """The leaving air has exactly the humidity ratio asked for."""
@@ -256,6 +252,22 @@ class _Task:
         h = np.maximum(h, mixture.enthalpy(saturated))
         t = np.maximum(mixture.dry_bulb(h), saturated)
         self._put(index, State(t, w, h, p))
+
+    def _hold_or_drain(self, index: NDArray[np.intp]) -> None:
+        """The mixture cannot be as dry as asked for; what is left once its fog has drained may be.
+
+        Then some warmer surface leaves the air just saturated at the dew point asked for.
+        """
+        take = self._take(index)
+        entering = self._entering(take)
+        least = np.minimum(take(self.coil.least_surface_temperature), entering.dry_bulb)
+        coldest = leaving_state(least, entering, take(self.coil.bypass_factor))
+        drained = coldest.humidity_ratio < take(self.request.humidity_ratio)
+        take = self._take(index[drained])
+        w = np.asarray(take(self.request.humidity_ratio))
+        t = np.array(np.broadcast_to(take(self.request.dew_point), w.shape))
+        self._put(index[drained], State.of(t, w, take(self.air.pressure)))
+        self._hold(index[~drained])
 
     def _hold(self, index: NDArray[np.intp]) -> None:
         """The surface is as cold as it may be."""
@@ -285,7 +297,8 @@ class _Task:
         def too_warm(surface: Array, which: NDArray[np.intp]) -> Array:
             sub = pick(which, index.shape)
             state = leaving_state(surface, _part(entering, sub), sub(bf))
-            return np.asarray(self.after(state, lambda full: sub(take(full))).dry_bulb - sub(target))
+            limit = self.before(sub(target), state, lambda full: sub(take(full)))
+            return np.asarray(state.enthalpy - limit)
 
         every = np.arange(index.size)
         beyond = too_warm(least, every) >= 0.0

@@ -83,19 +83,17 @@ class FanDevice:
 
     def heat_to_air(self, w: ArrayLike) -> Any:
         """Heat that the air keeps, kJ per kg dry air."""
-        fan = self.fan
-        share = 1.0 + fan.loss_to_air * (1.0 / fan.motor_efficiency - 1.0)
-        return self.shaft_work(w) * share
+        return (1.0 + w) * self._heat_per_moist_mass
 
-    def after(self, state: State, take: Any) -> State:
-        """The state behind the fan for some of the hours (see ``state.After``)."""
-        part = FanDevice(_picked(self.fan, take), take(self.standard_density))
-        return state.heated(part.heat_to_air(state.humidity_ratio))
+    @property
+    def _heat_per_moist_mass(self) -> Any:
+        share = 1.0 + self.fan.loss_to_air * (1.0 / self.fan.motor_efficiency - 1.0)
+        return self.shaft_work(0.0) * share
 
     def before(self, dry_bulb: ArrayLike, state: State, take: Any) -> Any:
         """Enthalpy before the fan, kJ/kg, of air that is at ``dry_bulb`` behind it (see ``state.Before``)."""
-        part = FanDevice(_picked(self.fan, take), take(self.standard_density))
-        return state.mixture.enthalpy(dry_bulb) - part.heat_to_air(state.humidity_ratio)
+        heat = (1.0 + state.humidity_ratio) * take(self._heat_per_moist_mass)
+        return state.mixture.enthalpy(dry_bulb) - heat
 
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """All hours in which the unit runs."""
@@ -104,19 +102,9 @@ class FanDevice:
         power = hours.mass_flow * self.electric_work(air.humidity_ratio)
         exchange = Exchange(
             device="fan",
+            kind="fan",
             heat=hours.mass_flow * heat,
             power=power,
             pressure_drop=-self.fan.total_pressure,
         )
         return Step(Streams(air.heated(heat), entering.exhaust), exchange)
-
-
-def _picked(fan: Fan, take: Any) -> Any:
-    """The fan's numbers for some of the hours; the fan itself where they are plain numbers."""
-    names = ("total_pressure", "efficiency", "motor_efficiency", "loss_to_air")
-    if all(np.ndim(getattr(fan, name)) == 0 for name in names):
-        return fan
-    part = object.__new__(Fan)
-    for name in names:
-        object.__setattr__(part, name, take(getattr(fan, name)))
-    return part

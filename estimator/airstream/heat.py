@@ -3,41 +3,21 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Final, Literal
 
 import numpy as np
 
-from estimator.airstream.state import Exchange, Hours, Request, State, Step, Streams
+from estimator.airstream.state import Exchange, Hours, Kind, Request, State, Step, Streams
+from estimator.constants import NEGLIGIBLE_HEAT
 from estimator.moist_air import Array, ArrayLike
+from estimator.plant import CARRIER_OF, USUAL_EFFICIENCY
 from estimator.settings import Settings, setting
 
-__all__ = ["CARRIER_OF", "HeatClass", "Preheat", "PreheatDevice", "ReheatDevice", "ReheatSource"]
-
-HeatClass = Literal["recovered", "solar", "purchased"]
-
-#: Sources of bought heat, and the carrier each draws on.
-CARRIER_OF: Final = {"electric": "electricity", "boiler": "fuel", "district": "heat"}
-
-#: Delivered heat over what is bought, where a scheme does not say: common practice (a non-condensing
-#: boiler in seasonal use; electric and district heat as delivered).
-_EFFICIENCY: Final = {"electric": 1.0, "boiler": 0.85, "district": 1.0}
-
-
-class _Bought(Settings):
-    """Shared by everything that buys heat: the efficiency's default depends on the source."""
-
-    source: str
-    efficiency: float | None
-
-    def __post_init__(self) -> None:
-        if self.efficiency is None and self.source in _EFFICIENCY:
-            object.__setattr__(self, "efficiency", _EFFICIENCY[self.source])
-        super().__post_init__()
+__all__ = ["BoughtHeat", "Preheat", "PreheatDevice", "ReheatDevice", "ReheatSource"]
 
 
 @dataclass(frozen=True, kw_only=True)
-class ReheatSource(_Bought):
-    """A bought source of heat after the coil; it serves reheat and outdoor-air heating alike."""
+class BoughtHeat(Settings):
+    """Something that buys heat."""
 
     source: str = setting(
         choices=tuple(CARRIER_OF),
@@ -63,9 +43,19 @@ class ReheatSource(_Bought):
         example="0.85",
     )
 
+    def __post_init__(self) -> None:
+        if self.efficiency is None and self.source in USUAL_EFFICIENCY:
+            object.__setattr__(self, "efficiency", USUAL_EFFICIENCY[self.source])
+        super().__post_init__()
+
 
 @dataclass(frozen=True, kw_only=True)
-class Preheat(_Bought):
+class ReheatSource(BoughtHeat):
+    """A bought source of heat after the coil; it serves reheat and outdoor-air heating alike."""
+
+
+@dataclass(frozen=True, kw_only=True)
+class Preheat(BoughtHeat):
     """Heat before the coil that keeps it, and what stands before it, from freezing."""
 
     dry_bulb: float = setting(
@@ -75,41 +65,19 @@ class Preheat(_Bought):
         doc="outdoor air is heated up to this dry bulb",
         example="4 degC",
     )
-    source: str = setting(
-        choices=tuple(CARRIER_OF),
-        doc="electric (electricity), boiler (fuel) or district (heat)",
-        example='"boiler"',
-    )
-    capacity: float | None = setting(
-        "power",
-        least=0.0,
-        above=True,
-        default=None,
-        doc="highest output; absent: unlimited",
-        example="120 kW",
-    )
-    efficiency: float | None = setting(
-        "fraction",
-        least=0.0,
-        above=True,
-        most=1.0,
-        default=None,
-        doc="delivered heat over bought energy; absent: 1 electric, 0.85 boiler, 1 district",
-        source="common practice",
-        example="0.85",
-    )
 
 
 def _heat(air: State, to: ArrayLike, capacity: ArrayLike | None, hours: Hours) -> Array:
     """Heat in kW that brings the air up to ``to`` as far as the capacity goes."""
-    wanted = hours.mass_flow * np.maximum(air.heat_to(to), 0.0)
+    needed = air.heat_to(to)
+    wanted = hours.mass_flow * np.where(needed > NEGLIGIBLE_HEAT, needed, 0.0)
     return wanted if capacity is None else np.minimum(wanted, capacity)
 
 
-def _step(device: str, entering: Streams, heat: Array, hours: Hours) -> Step:
+def _step(device: str, kind: Kind, entering: Streams, heat: Array, hours: Hours) -> Step:
     flow = np.where(hours.running, hours.mass_flow, 1.0)
     leaving = entering.supply.heated(heat / flow)
-    return Step(Streams(leaving, entering.exhaust), Exchange(device=device, heat=heat))
+    return Step(Streams(leaving, entering.exhaust), Exchange(device=device, kind=kind, heat=heat))
 
 
 @dataclass(frozen=True, eq=False)
@@ -121,7 +89,7 @@ class PreheatDevice:
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """Heat up to the freeze-protection dry bulb."""
         heat = _heat(entering.supply, self.preheat.dry_bulb, self.preheat.capacity, hours)
-        return _step("preheat", entering, heat, hours)
+        return _step("preheat", "preheat", entering, heat, hours)
 
 
 @dataclass(frozen=True, eq=False)
@@ -129,13 +97,11 @@ class ReheatDevice:
     """One source of active heat after the coil; it gives what those before it have left to give."""
 
     reheat: ReheatSource
-    heat_class: HeatClass = "purchased"
 
     def __call__(self, entering: Streams, hours: Hours, request: Request) -> Step:
         """Heat up to the low supply dry bulb."""
-        low = -np.inf if request.low is None else request.low
         if request.low is None:
             heat = np.zeros_like(hours.mass_flow)
         else:
-            heat = _heat(entering.supply, low, self.reheat.capacity, hours)
-        return _step(f"reheat.{self.reheat.source}", entering, heat, hours)
+            heat = _heat(entering.supply, request.low, self.reheat.capacity, hours)
+        return _step(f"reheat.{self.reheat.source}", "purchased", entering, heat, hours)

@@ -19,7 +19,7 @@ from estimator.airstream.coil import Coil, CoilDevice
 from estimator.airstream.fan import Fan, FanDevice
 from estimator.airstream.heat import Preheat, PreheatDevice, ReheatDevice, ReheatSource
 from estimator.airstream.solve import coupled
-from estimator.airstream.state import After, Before, Device, Exchange, Hours, Request, State, Streams
+from estimator.airstream.state import Before, Device, Exchange, Hours, Request, State, Streams
 from estimator.airstream.supply import Supply, request
 from estimator.moist_air import Array
 
@@ -57,7 +57,7 @@ def _fan(unit: Unit, position: str) -> list[Place]:
 
 
 def _coil(unit: Unit) -> list[Place]:
-    return [Place(CoilDevice(unit.coil, passive_after(unit), passive_before(unit)), "after coil")]
+    return [Place(CoilDevice(unit.coil, passive_before(unit)), "after coil")]
 
 
 def _heat(unit: Unit) -> list[Place]:
@@ -83,15 +83,8 @@ def places(unit: Unit) -> list[Place]:
     return [place for section in ORDER for place in section(unit)]
 
 
-def passive_after(unit: Unit) -> After:
-    """What the passive devices between the coil and the active heat make of a state."""
-    if unit.fan is None or unit.fan.position != "draw-through":
-        return lambda state, take: state
-    return FanDevice(unit.fan, unit.airflow.standard_density).after
-
-
 def passive_before(unit: Unit) -> Before:
-    """The enthalpy behind the coil that these devices turn into a given dry bulb."""
+    """What must leave the coil for a given dry bulb behind the passive devices downstream of it."""
     if unit.fan is None or unit.fan.position != "draw-through":
         return lambda t, state, take: state.mixture.enthalpy(t)
     return FanDevice(unit.fan, unit.airflow.standard_density).before

@@ -79,7 +79,8 @@ def coupled(run: Callable[[Array], tuple[Array, Result]], start: Array) -> Resul
 
     ``start`` has the shape (unknowns, ..., hours); ``run(unknowns)`` gives the residuals, of the same
     shape and in kelvin or its like, and what it computed on the way. Newton's rule with differences, all
-    unknowns of an hour together, to 1e-6. With no unknowns the airstream is run once.
+    unknowns of an hour together, to 1e-6; an hour that has come so near is left as it is. With no unknowns
+    the airstream is run once.
 
     Raises
     ------
@@ -87,18 +88,30 @@ def coupled(run: Callable[[Array], tuple[Array, Result]], start: Array) -> Resul
         An hour stays above the tolerance.
     """
     unknowns = start.astype(float)
-    count = unknowns.shape[0]
     for _ in range(_MOST_COUPLED_STEPS):
         residual, result = run(unknowns)
-        if count == 0 or np.abs(residual).max(initial=0.0) <= _COUPLED_TOLERANCE:
+        open_ = np.asarray(~(np.abs(residual) <= _COUPLED_TOLERANCE).all(axis=0))
+        if not open_.any():
             return result
-        slopes = np.empty((count, *residual.shape))
-        for j in range(count):
-            moved = unknowns.copy()
-            moved[j] += _DIFFERENCE_STEP
-            slopes[j] = (run(moved)[0] - residual) / _DIFFERENCE_STEP
-        # (unknown, residual, ..., hours) -> (..., hours, residual, unknown)
-        jacobian: Any = np.moveaxis(slopes, (1, 0), (-2, -1))
-        right = np.moveaxis(residual, 0, -1)[..., None]
-        unknowns = unknowns - np.moveaxis(np.linalg.solve(jacobian, right)[..., 0], -1, 0)
+        unknowns = np.where(open_, unknowns - _newton_step(run, unknowns, residual, open_), unknowns)
     raise ConvergenceError("coupled devices did not agree; the scheme may have no steady state")
+
+
+def _newton_step(
+    run: Callable[[Array], tuple[Array, Result]], unknowns: Array, residual: Array, open_: NDArray[np.bool_]
+) -> Array:
+    count = unknowns.shape[0]
+    slopes = np.empty((count, *residual.shape))
+    for j in range(count):
+        moved = unknowns.copy()
+        moved[j] += _DIFFERENCE_STEP
+        slopes[j] = (run(moved)[0] - residual) / _DIFFERENCE_STEP
+    # (unknown, residual, ..., hours) -> (..., hours, residual, unknown); finished hours need no slope
+    jacobian: Any = np.moveaxis(slopes, (1, 0), (-2, -1))
+    jacobian = np.where(open_[..., None, None], jacobian, np.eye(count))
+    right = np.moveaxis(residual, 0, -1)[..., None]
+    try:
+        step = np.linalg.solve(jacobian, right)[..., 0]
+    except np.linalg.LinAlgError as error:
+        raise ConvergenceError("coupled devices: an unknown has no effect on its residual") from error
+    return np.asarray(np.moveaxis(step, -1, 0))

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from functools import cached_property
-from typing import Any, Protocol, TypeAlias
+from typing import Any, Literal, Protocol, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
@@ -17,12 +17,12 @@ from numpy.typing import NDArray
 from estimator.moist_air import Array, ArrayLike, Mixture
 
 __all__ = [
-    "After",
     "Before",
     "Device",
     "Exchange",
     "Flags",
     "Hours",
+    "Kind",
     "Request",
     "State",
     "Step",
@@ -31,6 +31,9 @@ __all__ = [
 ]
 
 Flags: TypeAlias = NDArray[np.bool_]
+
+#: What the heat of a device counts as: the coil's cooling, preheat, fan heat, or a class of active heat.
+Kind: TypeAlias = Literal["coil", "preheat", "fan", "recovered", "solar", "purchased"]
 
 
 @dataclass(frozen=True, eq=False)
@@ -109,12 +112,14 @@ class Request:
 class Exchange:
     """What one device moves: heat, water and power, and the pressure drops it puts in the way of the air.
 
+    ``kind`` says what the heat counts as; a device whose heat is none of them has its own name there.
     ``heat`` is in kW into the supply air (negative: cooling); ``water`` in kg/s leaves the supply air as
     liquid or ice, carrying ``water_enthalpy`` kJ/kg; ``power`` is the electricity the device draws, kW.
     The exhaust side's counterparts are positive into the exhaust air.
     """
 
     device: str
+    kind: Kind
     heat: Array
     water: Array | None = None
     water_enthalpy: Array | None = None
@@ -122,6 +127,7 @@ class Exchange:
     pressure_drop: ArrayLike = 0.0
     exhaust_heat: Array | None = None
     exhaust_water: Array | None = None
+    exhaust_water_enthalpy: Array | None = None
     exhaust_pressure_drop: ArrayLike = 0.0
     #: named marks of single hours, such as "frozen"
     flags: Mapping[str, Flags] = field(default_factory=dict)
@@ -135,12 +141,9 @@ class Step:
     exchange: Exchange
 
 
-#: What the passive devices downstream make of a state that leaves the coil. The second argument picks
-#: the hours (and variants) in question out of arrays of the full shape.
-After: TypeAlias = Callable[[State, Callable[[Any], Any]], State]
-
-#: The enthalpy, kJ/kg, that leaves the coil when the air behind those devices is at a given dry bulb; the
-#: state gives humidity ratio and pressure.
+#: The enthalpy, kJ/kg, of air that leaves the coil and is at a given dry bulb behind the passive devices
+#: downstream; the state gives its humidity ratio and pressure, and the last argument picks the hours (and
+#: variants) in question out of arrays of the full shape.
 Before: TypeAlias = Callable[[ArrayLike, State, Callable[[Any], Any]], Array]
 
 

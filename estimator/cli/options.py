@@ -38,7 +38,6 @@ __all__ = [
     "weekday_number",
 ]
 
-_DAYS: Final = ("monday", "tuesday", "wednesday", "thursday", "friday", "saturday", "sunday")
 #: What the library calls an option, and what it is called on the command line.
 _NAMES: Final = {
     "humidity": "--humidity",
@@ -228,11 +227,13 @@ def weekday_number(name: str | None) -> int | None:
     """0 for Monday; three letters are enough."""
     if name is None:
         return None
+    from estimator.calendar_words import DAYS
+
     word = name.strip().lower()
-    found = [i for i, day in enumerate(_DAYS) if len(word) >= 3 and day.startswith(word)]
+    found = [i for i, day in enumerate(DAYS) if len(word) >= 3 and day.startswith(word)]
     if not found:
         raise InputError(
-            f"{name!r} is not a day of the week", where="--first-weekday", allowed=", ".join(_DAYS)
+            f"{name!r} is not a day of the week", where="--first-weekday", allowed=", ".join(DAYS)
         )
     return found[0]
 

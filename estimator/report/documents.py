@@ -10,12 +10,14 @@ from typing import Any, Final
 import numpy as np
 
 from estimator import __version__
+from estimator.calendar_words import DAYS
 from estimator.hour import HourResult
 from estimator.report.weather import first_weekday
 from estimator.result import YearResult
 from estimator.scheme import Scheme, leaves, plain, resolved_sha256
 from estimator.totals import Peaks, PeriodTotals
 from estimator.weather.model import WeatherYear
+from estimator.weather.options import WeatherOptions
 from estimator.weather.summary import Range, WeatherSummary
 
 __all__ = ["dumps", "hour_document", "scheme_document", "weather_document", "year_document"]
@@ -51,8 +53,19 @@ def _weather(weather: WeatherYear) -> dict[str, Any]:
         "first_weekday": first_weekday(weather),
         "source_years": list(weather.source_years),
         "synthetic": weather.synthetic,
+        "read_with": None if weather.options is None else _choices(weather.options),
         "repairs": [dataclasses.asdict(repair) for repair in weather.repairs],
         "findings": [dataclasses.asdict(finding) for finding in weather.findings],
+    }
+
+
+def _choices(options: WeatherOptions) -> dict[str, Any]:
+    """What a reader chose; whether the cache was used changes nothing."""
+    return {
+        "humidity": options.humidity,
+        "max_gap_h": options.max_gap_hours,
+        "utc_offset_h": options.utc_offset,
+        "first_weekday": None if options.first_weekday is None else DAYS[options.first_weekday].capitalize(),
     }
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping, Sequence
 from typing import Any, Final
 
+from estimator.calendar_words import DAYS, MONTHS, short
 from estimator.quantities import QUANTITIES, UnitSystem, convert
 from estimator.report.text import heading, page, pairs, paragraph
 from estimator.scheme import Leaf, Scheme, leaves, resolved_sha256
@@ -15,8 +16,6 @@ __all__ = ["SHORT_HASH", "scheme_list", "scheme_page", "setting_text"]
 #: Digits of a hash that are shown; a document has all of them.
 SHORT_HASH: Final = 12
 
-_DAYS: Final = ("mon", "tue", "wed", "thu", "fri", "sat", "sun")
-_MONTHS: Final = ("", "jan", "feb", "mar", "apr", "may", "jun", "jul", "aug", "sep", "oct", "nov", "dec")
 _ORIGINS: Final[Mapping[str, str]] = {"file": "file", "default": "default", "command": "--set"}
 
 
@@ -68,7 +67,7 @@ def _calendar_text(path: str, numbers: tuple[int, ...]) -> str:
         if kind == "hours":
             spans.append(f"{first:02d}:00..{last + 1:02d}:00")
         else:
-            names = _DAYS if kind == "days" else _MONTHS
+            names = [short(name) for name in (DAYS if kind == "days" else ("", *MONTHS))]
             spans.append(names[first] if first == last else f"{names[first]}..{names[last]}")
     return ", ".join(spans)
 

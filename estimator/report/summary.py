@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from typing import Final
 
 from estimator import __version__
+from estimator.calendar_words import MONTHS, short
 from estimator.constants import BALANCE_TOLERANCE
 from estimator.quantities import UnitSystem
 from estimator.report.documents import outdoor_at
@@ -26,6 +27,7 @@ from estimator.report.weather import first_weekday, notice_lines, place_text, ye
 from estimator.result import YearResult
 from estimator.scheme import Carbon, Prices, leaves, resolved_sha256
 from estimator.totals import PeriodTotals
+from estimator.weather.model import WeatherYear
 
 __all__ = ["why_not_stated", "year_page"]
 
@@ -86,7 +88,14 @@ def _annual(result: YearResult, system: UnitSystem) -> list[str]:
             "  by purchased reheat", "heat", annual.cooling_undone_by_purchased_kwh, undone, "cooling undone"
         ),
         row("Outdoor-air heating", "heat", annual.outdoor_air_heating_kwh),
-        row("Preheat", "heat", annual.preheat_kwh),
+    ]
+    if result.scheme.preheat is not None:
+        while_cooling = annual.preheat_while_cooling_kwh
+        rows += [
+            row("  by preheat", "heat", annual.preheat_kwh - while_cooling),
+            row("Preheat while the coil runs", "heat", while_cooling),
+        ]
+    rows += [
         row("Condensate", "water", annual.condensate_kg),
         row("Fan electricity", "electricity", annual.fan_kwh),
     ]
@@ -206,7 +215,6 @@ def _peaks(result: YearResult, system: UnitSystem) -> list[str]:
 
 # seasons and months
 
-_MONTHS: Final = ("", "Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec")
 _COLUMNS: Final = (
     ("Cooling", "cooling", "coil_cooling_kwh"),
     ("Latent", "cooling", "coil_latent_kwh"),
@@ -225,7 +233,7 @@ def _periods(result: YearResult, system: UnitSystem) -> list[str]:
         ["", *(unit(name, system) for _, name, _ in _COLUMNS)],
     ]
     rows += [_period_row(name, period, system) for name, period in sums.seasons.items()]
-    rows += [_period_row(_MONTHS[i], period, system) for i, period in enumerate(sums.months, 1)]
+    rows += [_period_row(_month(i), period, system) for i, period in enumerate(sums.months, 1)]
     rows.append(_period_row("Year", sums.annual, system))
     lines = table(rows, "l" + "r" * len(_COLUMNS))
     seasons = 2 + len(sums.seasons)
@@ -245,10 +253,23 @@ def _period_row(label: str, period: PeriodTotals, system: UnitSystem) -> list[st
 
 
 def _months_text(months: Sequence[int]) -> str:
-    return " ".join(_MONTHS[month] for month in months)
+    return " ".join(_month(month) for month in months)
+
+
+def _month(number: int) -> str:
+    return short(MONTHS[number - 1]).capitalize()
 
 
 # provenance
+
+
+def _choices(weather: WeatherYear) -> str:
+    """How the file was read."""
+    options = weather.options
+    if options is None:
+        return "not read from a file"
+    governs = options.humidity.replace("_", " ")
+    return f"{governs} governs; gaps up to {options.max_gap_hours} h filled"
 
 
 def _provenance(result: YearResult, system: UnitSystem) -> list[str]:
@@ -257,7 +278,7 @@ def _provenance(result: YearResult, system: UnitSystem) -> list[str]:
         [
             ("Weather", f"{weather.file} ({weather.format}), sha256 {weather.sha256[:SHORT_HASH]}"),
             ("", f"{place_text(weather, system)}; {count(weather.hours)} hours"),
-            ("", f"1 January is a {first_weekday(weather)}"),
+            ("", f"1 January is a {first_weekday(weather)}; {_choices(weather)}"),
             ("Scheme", f"{scheme.source.file}, sha256 {(scheme.source.file_sha256 or '')[:SHORT_HASH]}"),
             ("", f"all settings together: sha256 {resolved_sha256(scheme)[:SHORT_HASH]}"),
             ("Program", f"dewledger {__version__}"),

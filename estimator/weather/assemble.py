@@ -171,6 +171,8 @@ def _dew_point(
         first, second, what = dew, derived, "dew point missing, derived from relative humidity"
     else:
         first, second, what = derived, dew, "relative humidity missing, the file's dew point used"
+    if options.humidity == "relative_humidity":
+        log.repair("relative humidity above 100 %, taken as 100 %", rh > 100.0)
     lacking = np.isnan(first)
     log.repair(what, lacking & ~np.isnan(second))
     chosen = np.where(lacking, second, first)

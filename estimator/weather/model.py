@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 
 from estimator import moist_air
 from estimator.moist_air import Array
+from estimator.weather.options import WeatherOptions
 
 __all__ = ["Finding", "Repair", "WeatherYear"]
 
@@ -73,6 +74,8 @@ class WeatherYear:
     wind_direction: Array | None = None
     file: str = ""
     sha256: str = ""
+    #: the choices the file was read with; None for a year that was not read from a file
+    options: WeatherOptions | None = None
     format: str = ""
     synthetic: bool = False
     repairs: tuple[Repair, ...] = ()

@@ -47,7 +47,11 @@ def read_weather(path: str | os.PathLike[str], options: WeatherOptions = DEFAULT
         year = _kept(data, digest, options) if options.cache else _parse(data, options)
     except WeatherError as error:
         raise error.at(f"{file}: {error.where}" if error.where else str(file)) from error
-    return dataclasses.replace(year, file=file.name, sha256=digest, site=year.site or _stem(file))
+    # whether the cache was used changes nothing in the year
+    options = dataclasses.replace(options, cache=True)
+    return dataclasses.replace(
+        year, file=file.name, sha256=digest, options=options, site=year.site or _stem(file)
+    )
 
 
 def _kept(data: bytes, digest: str, options: WeatherOptions) -> WeatherYear:

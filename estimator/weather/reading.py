@@ -269,12 +269,12 @@ def _times(
 
 
 def _require_hourly(minute: Integers, number: Integers) -> None:
-    """Refuse an EPW whose minutes differ; one value all through, mostly 0 or 60, says nothing."""
-    other = minute % 60 != minute[0] % 60
+    """Refuse an EPW whose rows do not stand at full hours; 0 and 60 mean the same."""
+    other = minute % 60 != 0
     if other.any():
         row = int(other.argmax())
         raise WeatherError(
-            f"minute {minute[row]} after rows of minute {minute[0]}",
+            f"minute {minute[row]}",
             where=f"line {number[row]}, column minute",
             allowed="one row an hour",
             hint="average the file to hours first",

@@ -252,7 +252,7 @@ def test_the_summary_shows_the_figures_of_the_document(dewledger, years, busy):
         ("Reheat", "reheat_kwh"),
         ("Cooling undone", "cooling_undone_kwh"),
         ("by fan heat", "cooling_undone_by_fan_kwh"),
-        ("Preheat", "preheat_kwh"),
+        ("Preheat while the coil runs", "preheat_while_cooling_kwh"),
         ("Condensate", "condensate_kg"),
         ("operating", "hours_operating"),
         ("off target (unmet)", "hours_unmet"),

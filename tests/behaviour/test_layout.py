@@ -27,11 +27,12 @@ LINES = [
     {"year"},
     {"scheme_file"},
     {"scheme"},
-    {"plant", "airstream"},
+    {"airstream"},
+    {"plant"},
     {"settings", "weather"},
     {"samples"},
     {"quantities", "moist_air"},
-    {"files"},
+    {"calendar_words", "files"},
     {"constants", "errors"},
 ]
 LINE_OF = {name: number for number, names in enumerate(LINES) for name in names}

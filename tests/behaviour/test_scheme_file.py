@@ -265,6 +265,25 @@ def test_a_file_that_cannot_be_read_is_refused(tmp_path):
         load_scheme("startr")
 
 
+def test_the_order_of_sources_is_part_of_what_a_scheme_means():
+    boiler, electric = '[[reheat]]\nsource = "boiler"\n', '[[reheat]]\nsource = "electric"\n'
+    one, other = (BASE.replace(electric, sources) for sources in (boiler + electric, electric + boiler))
+    assert resolved_sha256(scheme(one)) != resolved_sha256(scheme(other))
+
+
+def test_schedules_and_reset_curves_that_differ_do_not_stack():
+    rules = [BASE + f'[[airflow.schedule]]\nhours = "{span}"\n' for span in ("07:00..19:00", "08:00..20:00")]
+    curves = [
+        f'{{ outdoor = ["{low} degC", "30 degC"], value = ["12 degC", "10 degC"] }}' for low in (10, 15)
+    ]
+    pairs = [[scheme(text) for text in rules], [scheme(supply__dew_point=curve) for curve in curves]]
+    for pair in pairs:
+        with pytest.raises(SchemeError, match="differ in more than a number"):
+            stack(pair)
+    fractions = [BASE + f"[[airflow.schedule]]\nfraction = {x}\n" for x in (0.5, 1.0)]
+    assert stack([scheme(text) for text in fractions]).variants == (2,)
+
+
 def test_schemes_of_different_shape_do_not_stack():
     for other in (scheme(BASE + FAN), scheme(coil__capacity="5 kW"), scheme(airflow__basis="actual")):
         with pytest.raises(SchemeError, match="differ in more than a number"):

@@ -21,6 +21,7 @@ from estimator import moist_air
 from estimator.constants import (
     BALANCE_TOLERANCE,
     MOLE_MASS_RATIO,
+    NEGLIGIBLE_HEAT,
     SECONDS_PER_HOUR,
     STANDARD_PRESSURE,
     TEMPERATURE_TOLERANCE,
@@ -345,7 +346,9 @@ def _year(  # noqa: C901, PLR0912, PLR0915 - one loop is the point of it
                     h2 = _enthalpy(t2, w2, p)
             else:
                 t2, w2, h2 = _leaving(min(t_least, t1), t1, w1, h1, p, bf)
-                held = True
+                held = w2 >= w_set
+                if not held:
+                    t2, w2, h2 = t_set, w_set, _enthalpy(t_set, w_set, p)
         if not held and _dry_bulb(h2 + fan_heat * (1.0 + w2), w2, p) > high + _ROOT_TOLERANCE:
             least = min(t_least, t1)
             # a dry coil needs no search: what stands behind the fan says what must leave the coil
@@ -365,7 +368,9 @@ def _year(  # noqa: C901, PLR0912, PLR0915 - one loop is the point of it
         from_fan = fan_heat * (1.0 + w2)
         h3 = h2 + from_fan
         t3 = _dry_bulb(h3, w2, p)
-        heat = max(_enthalpy(low, w2, p) - h3, 0.0)
+        heat = _enthalpy(low, w2, p) - h3
+        if heat <= NEGLIGIBLE_HEAT:
+            heat = 0.0
         h4 = h3 + heat
         t4 = _dry_bulb(h4, w2, p)
         off_heat, off_water = _imbalance(

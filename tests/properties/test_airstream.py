@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import itertools
+from functools import partial
 
 import numpy as np
 import pytest
@@ -12,6 +13,9 @@ from support import BASE, FAN, hours, scheme, states, varied_year, weather_year
 
 from estimator import moist_air
 from estimator.airstream.coil import apparatus_dew_point
+from estimator.airstream.heat import ReheatDevice
+from estimator.airstream.state import State, Step, Streams
+from estimator.errors import BalanceError
 from estimator.scheme import stack
 from estimator.totals import sum_year
 from estimator.year import run_hours, run_year, variant
@@ -181,6 +185,62 @@ def test_a_vanishing_bypass_meets_the_saturated_case():
     none = run_hours(scheme(coil__bypass_factor="0"), air)
     little = run_hours(scheme(coil__bypass_factor="1e-9"), air)
     np.testing.assert_allclose(little.coil_cooling, none.coil_cooling, rtol=1e-6, atol=1e-6)
+
+
+@given(st.floats(0.0, 0.5), st.floats(2.0, 16.0), st.integers(0, 10_000))
+@settings(max_examples=60, deadline=None)
+def test_a_humidity_controlled_coil_never_leaves_below_the_dew_point_asked_for(bypass, dew_point, seed):
+    one = scheme(
+        coil__bypass_factor=bypass, supply__dew_point=f"{dew_point} degC", supply__dry_bulb="30 degC"
+    )
+    year = run_hours(one, hours(*states(seed)))
+    asked = year.airstream.request.humidity_ratio
+    assert (year.airstream.points["after coil"].humidity_ratio[year.drying] >= asked[year.drying]).all()
+
+
+def test_saturated_air_whose_fog_drains_reaches_a_dew_point_that_its_mixture_cannot():
+    """Saturated at 30 degC with a tenth bypassed: the mixture stays above the humidity of 7 degC.
+
+    0.1 x 27.3 g/kg + 0.9 x 4.1 g/kg (a surface of 1 degC) = 6.4 g/kg, above the 6.2 g/kg of 7 degC.
+    """
+    w = moist_air.saturation_humidity_ratio(30.0, 101_325.0)
+    one = scheme(coil__bypass_factor=0.1, supply__dew_point="7 degC")
+    year = run_hours(one, hours([30.0], [float(w)], [101_325.0]))
+    after = year.airstream.points["after coil"]
+    assert after.dry_bulb == pytest.approx([7.0], abs=1e-9)
+    assert not year.unmet["dew_point"].any()
+    assert not year.coil_flags["at least surface temperature"].any()
+    assert 1.0 < year.apparatus_dew_point()[0] < 7.0
+
+
+def test_what_root_finding_leaves_over_is_no_reheat():
+    for text in (BASE, BASE + FAN):
+        one = scheme(text, coil__bypass_factor=0.1, supply__dew_point="12.9 degC", supply__dry_bulb="13 degC")
+        year = run_hours(one, hours(*states(5, 4000)))
+        assert year.drying.sum() > 500
+        assert (year.reheat[year.reheat > 0.0] > 1e-6 * year.mass_flow[0]).all()
+        warm = year.drying & (year.airstream.points["after coil"].dry_bulb > 13.0 - 1e-9)
+        assert (year.reheat[warm] == 0.0).all()
+    saturated = scheme(coil__bypass_factor=0, supply__dew_point="13 degC", supply__dry_bulb="13 degC")
+    assert not (run_hours(saturated, hours(*states(5, 4000))).reheat > 0.0).any()
+
+
+def test_a_device_that_loses_water_or_heat_is_caught(monkeypatch):
+    def leaky(entering, hours, request, *, part):
+        step = original(entering, hours, request)
+        air = step.leaving.supply
+        lost = State.of(
+            air.dry_bulb - 0.1 * (part == "heat"), air.humidity_ratio * (1 - 0.1 * (part == "water")), 1e5
+        )
+        return Step(Streams(lost), step.exchange)
+
+    for part in ("water", "heat"):
+        original = ReheatDevice(scheme().reheat[0])
+        monkeypatch.setattr(
+            "estimator.airstream.order.ReheatDevice", lambda source, part=part: partial(leaky, part=part)
+        )
+        with pytest.raises(BalanceError, match="does not balance"):
+            run_hours(scheme(), hours([30.0], [0.016], [1e5]))
 
 
 def test_a_constant_year_is_8760_times_one_hour():

@@ -146,7 +146,10 @@ def dried(entering: Air, p: float, unit: Unit) -> Air:
         return saturated(max(unit.dew_point, unit.least_surface), p)
     wanted = (saturated(unit.dew_point, p).w - bf * entering.w) / (1.0 - bf)
     if wanted <= coldest.w:
-        return off_coil(entering, unit.least_surface, p, bf)
+        # the mixture cannot be as dry as asked for, but with its fog drained it may be drier: then some
+        # warmer surface leaves the air saturated at the setpoint, never below it
+        held, asked = off_coil(entering, unit.least_surface, p, bf), saturated(unit.dew_point, p)
+        return asked if held.w < asked.w else held
     surface = dew_point(wanted, p)
     return off_coil(entering, surface, p, bf, unit.dew_point)
 
