@@ -12,7 +12,7 @@ SEA_LEVEL = 101_325.0
 
 
 def humidity_ratio_from_wet_bulb(t: float, wet_bulb: float, p: float = SEA_LEVEL) -> float:
-    """Humidity ratio, kg/kg, of air of this dry and wet bulb, by search: the program has no such function."""
+    """Humidity ratio, kg/kg, of air of this dry and wet bulb, searched for, not by the program itself."""
     saturated = float(moist_air.saturation_humidity_ratio(wet_bulb, p))
     return float(brentq(lambda w: float(moist_air.wet_bulb(t, w, p)) - wet_bulb, 0.0, saturated))
 

@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
+from published import checks
 from published import coolprop_reference as reference
+from published.checks import Recorder, validates
 from published.years import real_year
 
 from estimator import moist_air
@@ -36,18 +38,25 @@ def ventilation_load_index(weather: WeatherYear) -> tuple[float, float]:
     return float(latent / BTU_PER_TON_HOUR), float(sensible / BTU_PER_TON_HOUR)
 
 
+def at(pressure: float | None) -> str:
+    """Which pressure, in words."""
+    return "the file's pressure" if pressure is None else "sea level"
+
+
+@validates("Ventilation load index of Miami", checks.LOAD_INDEX)
 @pytest.mark.parametrize("pressure", [None, SEA_LEVEL])
-def test_ventilation_load_index_of_miami(pressure: float | None) -> None:
-    """Published for Miami: 17.8 latent, 2.7 sensible ton-hours per cfm and year (from memory), on TMY2.
+def test_ventilation_load_index_of_miami(pressure: float | None, check: Recorder) -> None:
+    """Latent and sensible ton-hours a year that bring 1 cfm of outdoor air to 75 degF and 65 gr/lb, on TMY2.
 
     2 %: the last digit of 2.7 alone is 1.9 %. The article does not say whether it took the file's station
     pressure or sea level, nor whether it used an enhancement factor; each moves Miami's latent index by 1 %.
     """
     latent, sensible = ventilation_load_index(real_year("Miami", pressure))
-    assert latent == pytest.approx(17.8, rel=2e-2)
-    assert sensible == pytest.approx(2.7, rel=2e-2)
+    check(f"latent, {at(pressure)}", latent, 17.8, "ton-h/cfm", rel=2e-2)
+    check(f"sensible, {at(pressure)}", sensible, 2.7, "ton-h/cfm", rel=2e-2)
 
 
+@validates("Ventilation load index and pressure", checks.APART)
 @pytest.mark.parametrize(
     ("site", "pressure", "latent"),
     [
@@ -58,14 +67,16 @@ def test_ventilation_load_index_of_miami(pressure: float | None) -> None:
         ("Sand Point", None, 0.0),
     ],
 )
-def test_ventilation_load_index_and_pressure(site: str, pressure: float | None, latent: float) -> None:
-    """Computed apart from this program with the enhancement factor (a cross-check), last digit printed.
+def test_ventilation_load_index_and_pressure(
+    site: str, pressure: float | None, latent: float, check: Recorder
+) -> None:
+    """With the enhancement factor; to the last digit.
 
     The pressure convention alone moves Greensboro, 270 m up, by 10 %: humidity counted in grains above a
     fixed reference is sensitive to it.
     """
     found, _ = ventilation_load_index(real_year(site, pressure))
-    assert found == pytest.approx(latent, abs=0.005)
+    check(f"latent, {site}, {at(pressure)}", found, latent, "ton-h/cfm", within=0.005)
 
 
 def saturated_leaving(site: str, dew_point: float) -> Totals:
@@ -95,42 +106,47 @@ CONDENSATE = [
 ]
 
 
+@validates("Condensate of all outdoor air", checks.APART)
 @pytest.mark.parametrize(("site", "dew_point", "gallons", "per_ton_hour"), CONDENSATE)
 def test_condensate_of_all_outdoor_air(
-    site: str, dew_point: float, gallons: float, per_ton_hour: float
+    site: str, dew_point: float, gallons: float, per_ton_hour: float, check: Recorder
 ) -> None:
-    """US gallons per cfm and year, and per ton-hour over all cooling hours, at the file's pressure.
+    """US gallons per cfm and year, and per ton-hour over all cooling hours, at the file's pressure, the air
+    leaving saturated.
 
-    Computed apart from this program (a cross-check), to two or three digits and, for Miami's 24.4, by
+    The expected figures are given to two or three digits and, for Miami's 24.4, by
     perfect-gas formulas, 0.4 % below real air. Hence 1 % of the gallons, 0.006 of the ratio.
     """
     annual = saturated_leaving(site, dew_point).annual
     found = annual.condensate_kg / KG_PER_GALLON
-    assert found == pytest.approx(gallons, rel=1e-2)
-    ton_hours = annual.coil_cooling_kwh / KWH_PER_TON_HOUR
-    assert found / ton_hours == pytest.approx(per_ton_hour, abs=0.006)
+    check(f"{site}, leaving at {dew_point:g} degC", found, gallons, "US gal/cfm", rel=1e-2)
+    ratio = found / (annual.coil_cooling_kwh / KWH_PER_TON_HOUR)
+    check(f"{site}, leaving at {dew_point:g} degC, ratio", ratio, per_ton_hour, "US gal/ton-h", within=0.006)
 
 
+@validates("Condensate of all outdoor air on CoolProp", checks.COOLPROP)
 @pytest.mark.parametrize(("site", "dew_point"), [row[:2] for row in CONDENSATE])
-def test_condensate_against_coolprop(site: str, dew_point: float) -> None:
+def test_condensate_against_coolprop(site: str, dew_point: float, check: Recorder) -> None:
     """The same years on CoolProp, 0.1 %."""
     weather = real_year(site)
     unit = reference.Unit(dew_point=dew_point, low=dew_point, high=dew_point, mass_flow=KG_PER_S_PER_CFM)
     expected = reference.total(reference.hours(weather.dry_bulb, weather.dew_point, weather.pressure, unit))
     annual = saturated_leaving(site, dew_point).annual
-    assert annual.condensate_kg == pytest.approx(expected.condensate_kg, rel=1e-3)
-    assert annual.coil_cooling_kwh == pytest.approx(expected.coil_cooling_kwh, rel=1e-3)
+    place = f"{site}, leaving at {dew_point:g} degC"
+    check(f"{place}, condensate", annual.condensate_kg, expected.condensate_kg, "kg/cfm", rel=1e-3)
+    check(f"{place}, cooling", annual.coil_cooling_kwh, expected.coil_cooling_kwh, "kWh/cfm", rel=1e-3)
 
 
-def test_condensate_is_the_sum_of_moisture_removed() -> None:
-    """The published way to predict it: flow times what each hour's air holds above what leaves (Lawrence,
-    Perry, Dempsey, ASHRAE Transactions 116(2), 2010; title read). An identity, so to rounding.
+@validates("Condensate is the sum of the moisture removed", checks.COLLECTION)
+def test_condensate_is_the_sum_of_moisture_removed(check: Recorder) -> None:
+    """The published way to predict it: flow times what each hour's air holds above what leaves. An identity,
+    so to rounding.
     """
     weather = real_year("Miami")
     leaving = moist_air.saturation_humidity_ratio(12.78, weather.pressure)
     removed = np.maximum(weather.humidity_ratio - leaving, 0.0).sum()
     annual = saturated_leaving("Miami", 12.78).annual
-    assert annual.condensate_kg == pytest.approx(3600.0 * KG_PER_S_PER_CFM * removed, rel=1e-9)
+    check("Miami", annual.condensate_kg, 3600.0 * KG_PER_S_PER_CFM * removed, "kg/cfm", rel=1e-9)
 
 
 def litres_per_latent_kwh(period: PeriodTotals) -> float:
@@ -138,18 +154,19 @@ def litres_per_latent_kwh(period: PeriodTotals) -> float:
     return period.condensate_kg / period.coil_latent_kwh if period.coil_latent_kwh > 0.0 else 0.0
 
 
+@validates("The ceiling of condensate", checks.VAPORISATION)
 @pytest.mark.parametrize("dew_point", [2.0, 8.0, 12.78])
 @pytest.mark.parametrize("site", ["Miami", "Greensboro", "Sand Point"])
-def test_condensate_stays_below_its_ceiling(site: str, dew_point: float) -> None:
+def test_condensate_stays_below_its_ceiling(site: str, dew_point: float, check: Recorder) -> None:
     """1.47 L per latent kWh, 1.36 US gal per latent ton-hour, is exceeded in no month and no season.
 
-    The ceiling is the heat of vaporisation, 2450 kJ/kg at 20 degC (common knowledge; computed); what leaves
-    at the coil's temperature takes more heat than that, down to 1.41 L/kWh.
+    The ceiling is the heat of vaporisation, 2450 kJ/kg at 20 degC; what leaves at the coil's temperature
+    takes more heat than that, down to 1.41 L/kWh. Sand Point has no condensate at 12.78 degC.
     """
     result = saturated_leaving(site, dew_point)
     periods = [result.annual, *result.months, *result.seasons.values()]
     rates = [litres_per_latent_kwh(period) for period in periods]
-    assert max(rates) <= 1.47
+    check.at_most(f"{site}, leaving at {dew_point:g} degC", max(rates), 1.47, "L/kWh")
     assert max(rates) * KWH_PER_TON_HOUR / KG_PER_GALLON <= 1.36
     assert all(rate == 0.0 or rate > 1.41 for rate in rates)
     assert all(period.condensate_kg == 0.0 for period in periods if period.coil_latent_kwh == 0.0)

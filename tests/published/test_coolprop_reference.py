@@ -8,7 +8,9 @@ from pathlib import Path
 
 import pytest
 from CoolProp.CoolProp import HAPropsSI
+from published import checks
 from published import coolprop_reference as reference
+from published.checks import Recorder, validates
 from published.coolprop_reference import Air, Sums, Unit
 
 SEA_LEVEL = 101_325.0
@@ -43,32 +45,32 @@ def test_it_shares_nothing_with_the_program() -> None:
     }  # fmt: skip
 
 
-def test_cooling_example() -> None:
-    """ASHRAE Handbook Fundamentals 2021 (SI), ch. 1, section 10: 5.70 kg/s of 30 degC 50 % to saturated
-    10 degC, 197 kW (198.2 computed). 1 % for the chart, 0.1 % for the computed figures.
-    """
+@validates("The separate computation: cooling", checks.EXAMPLES)
+def test_cooling_example(check: Recorder) -> None:
+    """5.70 kg/s of 30 degC 50 % to saturated 10 degC. 1 % for the chart, 0.1 % for the computed figures."""
     sums = one_hour(humid(30.0, 0.5), dew_point=10.0, low=10.0, high=10.0, mass_flow=5.702)
-    assert sums.coil_cooling_kwh == pytest.approx(197.0, rel=1e-2)
-    assert sums.coil_cooling_kwh == pytest.approx(198.2, rel=1e-3)
-    assert sums.condensate_kg == pytest.approx(3600.0 * 0.03256, rel=1e-3)
+    check("cooling", sums.coil_cooling_kwh, 197.0, "kW", rel=1e-2)
+    check("cooling", sums.coil_cooling_kwh, 198.2, "kW", rel=1e-3, source=checks.APART)
+    check("water", sums.condensate_kg / 3600.0, 0.03256, "kg/s", rel=1e-3, source=checks.APART)
     assert sums.reheat_kwh == pytest.approx(0.0, abs=1e-9)
 
 
-def test_cool_and_reheat_example() -> None:
-    """Textbook (from memory): 34 degC 70 % to 22 degC 50 %, off the coil at 11.1 degC, reheat 11.3 kJ/kg,
-    cooling 62.7 kJ/kg with the water at 10 degC. Here it leaves at 11.1 degC: 0.06 kJ/kg less. 2 % of the
-    reheat, 0.15 kJ/kg of the cooling.
+@validates("The separate computation: cool and reheat", checks.TEXTBOOK)
+def test_cool_and_reheat_example(check: Recorder) -> None:
+    """34 degC 70 % to 22 degC 50 %; the textbook's cooling has the water at 10 degC. Here it leaves at
+    11.1 degC: 0.06 kJ/kg less. 2 % of the reheat, 0.15 kJ/kg of the cooling.
     """
     supplied = humid(22.0, 0.5)
     off_coil = reference.dew_point(supplied.w, SEA_LEVEL)
     sums = one_hour(humid(34.0, 0.7), dew_point=off_coil, low=22.0, high=22.0)
-    assert off_coil == pytest.approx(11.1, abs=0.05)
-    assert sums.reheat_kwh == pytest.approx(11.3, rel=2e-2)
-    assert sums.coil_cooling_kwh == pytest.approx(62.7 - 0.06, abs=0.15)
+    check("off-coil dry bulb", off_coil, 11.1, "degC", within=0.05)
+    check("reheat", sums.reheat_kwh, 11.3, "kJ/kg", rel=2e-2)
+    check("cooling, less the 0.06", sums.coil_cooling_kwh, 62.7 - 0.06, "kJ/kg", within=0.15)
 
 
-def test_bypass_example() -> None:
-    """Textbook: 32 degC 65 % to 25 degC 60 % with an apparatus dew point of 13 degC: bypass factor 0.25
+@validates("The separate computation: coil with bypass", checks.APART)
+def test_bypass_example(check: Recorder) -> None:
+    """32 degC 65 % to 25 degC 60 % with an apparatus dew point of 13 degC: bypass factor 0.25
     (computed; 0.237 off the book's chart), off-coil 17.8 degC, and per 250 m3/min 34.5 kW of reheat and
     130 kg/h of water. Given the bypass factor and the supply, the apparatus dew point must come out: within
     0.1 K, the digits of the factor. 1 % for the rest.
@@ -79,35 +81,39 @@ def test_bypass_example() -> None:
     unit = Unit(dew_point=setpoint, low=25.0, high=25.0, bypass_factor=0.25, mass_flow=250.0 / 60.0 / volume)
     leaving = reference.dried(entering, SEA_LEVEL, unit)
     surface_w = (supplied.w - 0.25 * entering.w) / 0.75
-    assert reference.dew_point(surface_w, SEA_LEVEL) == pytest.approx(13.0, abs=0.1)
+    surface = reference.dew_point(surface_w, SEA_LEVEL)
+    check("apparatus dew point", surface, 13.0, "degC", within=0.1, source=checks.TEXTBOOK_COIL)
     assert leaving.w == pytest.approx(supplied.w, rel=1e-9)
-    assert leaving.t == pytest.approx(17.8, abs=0.1)
+    check("off-coil dry bulb", leaving.t, 17.8, "degC", within=0.1)
     sums = reference.hour(entering, SEA_LEVEL, unit)
-    assert sums.reheat_kwh == pytest.approx(34.5, rel=1e-2)
-    assert sums.condensate_kg == pytest.approx(130.0, rel=1e-2)
+    check("reheat", sums.reheat_kwh, 34.5, "kW", rel=1e-2)
+    check("water", sums.condensate_kg, 130.0, "kg/h", rel=1e-2)
 
 
-def test_dry_hours() -> None:
+@validates("The separate computation: dry hours", checks.CONSTANTS)
+def test_dry_hours(check: Recorder) -> None:
     """Sensible cooling and heating by the textbook specific heat 1.006 + 1.86 W, 0.2 %."""
     dew, w = 5.0, reference.saturated(5.0, SEA_LEVEL).w
     hot = one_hour(reference.outdoor(30.0, dew, SEA_LEVEL), dew_point=11.0, low=18.0, high=22.0)
-    assert hot.coil_cooling_kwh == pytest.approx((1.006 + 1.86 * w) * 8.0, rel=2e-3)
+    check("cooling, 30 to 22 degC", hot.coil_cooling_kwh, (1.006 + 1.86 * w) * 8.0, "kJ/kg", rel=2e-3)
     assert hot.coil_latent_kwh == pytest.approx(0.0, abs=1e-9)
     assert hot.condensate_kg == 0.0
     cold = one_hour(reference.outdoor(6.0, dew, SEA_LEVEL), dew_point=11.0, low=18.0, high=22.0)
-    assert cold.outdoor_air_heating_kwh == pytest.approx((1.006 + 1.86 * w) * 12.0, rel=2e-3)
+    heat = cold.outdoor_air_heating_kwh
+    check("heating, 6 to 18 degC", heat, (1.006 + 1.86 * w) * 12.0, "kJ/kg", rel=2e-3)
     assert cold.reheat_kwh == 0.0
     assert cold.coil_cooling_kwh == 0.0
     mild = one_hour(reference.outdoor(20.0, dew, SEA_LEVEL), dew_point=11.0, low=18.0, high=22.0)
     assert dataclasses.astuple(mild) == (0.0,) * 6
 
 
-def test_latent_heat_is_the_water_removed() -> None:
+@validates("The separate computation: latent heat", checks.CONSTANTS)
+def test_latent_heat_is_the_water_removed(check: Recorder) -> None:
     """Latent per kg of water is vapour at the entering dry bulb less water at the leaving one, 2501 + 1.86 t
     - 4.19 t_leaving (textbook). 0.1 %: constant specific heats."""
     sums = one_hour(humid(30.0, 0.8), dew_point=10.0, low=20.0, high=20.0)
     per_kg = 3600.0 * sums.coil_latent_kwh / sums.condensate_kg
-    assert per_kg == pytest.approx(2501.0 + 1.86 * 30.0 - 4.19 * 10.0, rel=1e-3)
+    check("per kg of water", per_kg, 2501.0 + 1.86 * 30.0 - 4.19 * 10.0, "kJ/kg", rel=1e-3)
 
 
 def test_a_dew_point_at_the_setpoint_needs_no_drying() -> None:

@@ -13,8 +13,9 @@ import numpy as np
 import psychrolib
 import pytest
 from CoolProp.CoolProp import HAPropsSI, PropsSI
-from published import water_reference
+from published import checks, water_reference
 from published.chart import SEA_LEVEL
+from published.checks import Recorder, validates
 
 from estimator import moist_air
 from estimator.moist_air import Array
@@ -47,32 +48,36 @@ def grid() -> Grid:
     return Grid(t, p, rh, w)
 
 
-def test_humidity_ratio(grid: Grid) -> None:
-    """Within 0.05 %, the claim; the largest difference is 0.037 % (15 degC and 106 kPa, saturated)."""
+@validates("Humidity ratio over the claimed range", checks.COOLPROP)
+def test_humidity_ratio(grid: Grid, check: Recorder) -> None:
+    """Within 0.05 %, the claim; the largest difference is at 15 degC and 106 kPa, saturated."""
     found = moist_air.humidity_ratio_from_relative_humidity(grid.t, grid.rh, grid.p)
-    np.testing.assert_allclose(found, grid.w, rtol=5e-4, atol=0.0)
+    check.largest("humidity ratio", found, grid.w, "kg/kg", rel=5e-4)
 
 
-def test_relative_humidity(grid: Grid) -> None:
+@validates("Relative humidity over the claimed range", checks.COOLPROP)
+def test_relative_humidity(grid: Grid, check: Recorder) -> None:
     """The same comparison backwards, 0.05 %."""
     found = moist_air.relative_humidity(grid.t, grid.w, grid.p)
-    np.testing.assert_allclose(found, grid.rh, rtol=5e-4, atol=0.0)
+    check.largest("relative humidity", found, grid.rh, "1", rel=5e-4)
 
 
-def test_enthalpy(grid: Grid) -> None:
-    """Within 0.12 kJ/kg, the claim, up to 50 degC saturated at 60 kPa (160 g/kg); 0.033 there.
+@validates("Enthalpy over the claimed range", checks.COOLPROP)
+def test_enthalpy(grid: Grid, check: Recorder) -> None:
+    """Within 0.12 kJ/kg, the claim, up to 50 degC saturated at 60 kPa (160 g/kg).
 
-    In the range the fit was made for, up to 120 g/kg, 0.0075 kJ/kg; the largest difference is 0.0071.
+    In the range the fit was made for, up to 120 g/kg, 0.0075 kJ/kg.
     """
     expected = humid_air("H", grid.t, "W", grid.w, grid.p) / 1000.0
     found = moist_air.enthalpy(grid.t, grid.w, grid.p)
-    np.testing.assert_allclose(found, expected, rtol=0.0, atol=0.12)
+    check.largest("the whole range", found, expected, "kJ/kg", within=0.12)
     fitted = grid.w <= 0.12
-    np.testing.assert_allclose(found[fitted], expected[fitted], rtol=0.0, atol=0.0075)
+    check.largest("up to 120 g/kg", found[fitted], expected[fitted], "kJ/kg", within=0.0075)
 
 
-def test_enthalpy_of_saturated_air(grid: Grid) -> None:
-    """With the program's own humidity ratio as well, up to 120 g/kg: 0.12 kJ/kg; the largest is 0.096.
+@validates("Enthalpy of saturated air at all pressures", checks.COOLPROP)
+def test_enthalpy_of_saturated_air(grid: Grid, check: Recorder) -> None:
+    """With the program's own humidity ratio as well, up to 120 g/kg: 0.12 kJ/kg.
 
     That is nearly all humidity ratio: 0.03 % of 119 g/kg, at 45 degC and 60 kPa, carries 0.09 kJ/kg.
     """
@@ -80,31 +85,35 @@ def test_enthalpy_of_saturated_air(grid: Grid) -> None:
     t, p, w = grid.t[saturated], grid.p[saturated], grid.w[saturated]
     expected = humid_air("H", t, "W", w, p) / 1000.0
     found = moist_air.enthalpy(t, moist_air.saturation_humidity_ratio(t, p), p)
-    np.testing.assert_allclose(found, expected, rtol=0.0, atol=0.12)
+    check.largest("enthalpy, saturated", found, expected, "kJ/kg", within=0.12)
 
 
-def test_specific_volume(grid: Grid) -> None:
+@validates("Specific volume over the claimed range", checks.COOLPROP)
+def test_specific_volume(grid: Grid, check: Recorder) -> None:
     """Within 0.1 % from -20 degC up and to 120 g/kg, 0.12 % over the whole grid.
 
     The program's is a perfect gas. Cold dense air is further from one, 0.114 % at -30 degC and 106 kPa, and
     so is very moist air, 0.103 % at 50 degC and 60 kPa, saturated.
     """
     expected = humid_air("V", grid.t, "W", grid.w, grid.p)
-    error = np.abs(moist_air.specific_volume(grid.t, grid.w, grid.p) / expected - 1.0)
-    assert error[(grid.t >= -20.0) & (grid.w <= 0.12)].max() < 1.0e-3
-    assert error.max() < 1.2e-3
+    found = moist_air.specific_volume(grid.t, grid.w, grid.p)
+    usual = (grid.t >= -20.0) & (grid.w <= 0.12)
+    check.largest("from -20 degC and to 120 g/kg", found[usual], expected[usual], "m3/kg", rel=1.0e-3)
+    check.largest("the whole range", found, expected, "m3/kg", rel=1.2e-3)
 
 
-def test_dew_point(grid: Grid) -> None:
-    """Within 0.01 K: 0.04 % of humidity ratio is 0.006 K, the largest difference."""
+@validates("Dew point over the claimed range", checks.COOLPROP)
+def test_dew_point(grid: Grid, check: Recorder) -> None:
+    """Within 0.01 K: 0.04 % of humidity ratio is 0.006 K."""
     moist = grid.rh > 0.0
     t, p, w = grid.t[moist], grid.p[moist], grid.w[moist]
     expected = humid_air("D", t, "W", w, p) - 273.15
-    np.testing.assert_allclose(moist_air.dew_point(w, p), expected, rtol=0.0, atol=0.01)
+    check.largest("dew point", moist_air.dew_point(w, p), expected, "K", within=0.01)
 
 
-def test_wet_bulb(grid: Grid) -> None:
-    """Within 0.01 K, the largest difference being 0.007 K, where both find a solution over the same phase.
+@validates("Wet bulb over the claimed range", checks.COOLPROP)
+def test_wet_bulb(grid: Grid, check: Recorder) -> None:
+    """Within 0.01 K where both find a solution over the same phase.
 
     From a little below 0 degC CoolProp returns the wet bulb over ice although there is one over liquid
     water too, which is the one the program returns; those points have a test of their own.
@@ -113,10 +122,11 @@ def test_wet_bulb(grid: Grid) -> None:
     found = moist_air.wet_bulb(grid.t, grid.w, grid.p)
     same = (expected < 0.01) == (found < 0.01)
     assert same.mean() > 0.98
-    np.testing.assert_allclose(found[same], expected[same], rtol=0.0, atol=0.01)
+    check.largest("wet bulb", found[same], expected[same], "K", within=0.01)
 
 
-def test_wet_bulb_where_two_solutions_exist(grid: Grid) -> None:
+@validates("Wet bulb where two solutions exist", checks.COOLPROP)
+def test_wet_bulb_where_two_solutions_exist(grid: Grid, check: Recorder) -> None:
     """The program's wet bulb over water satisfies its definition with CoolProp's properties.
 
     To 0.03 kJ/kg: 0.035 % of the water evaporated, 4 g/kg at most, and the fits; 0.015 K.
@@ -131,12 +141,13 @@ def test_wet_bulb_where_two_solutions_exist(grid: Grid) -> None:
         h_s = HAPropsSI("H", "T", kelvin, "R", 1.0, "P", p) / 1000.0
         h = HAPropsSI("H", "T", grid.t[i] + 273.15, "W", w, "P", p) / 1000.0
         water = PropsSI("H", "T", kelvin, "Q", 0, "Water") / 1000.0
-        assert h + (saturated - w) * water == pytest.approx(h_s, abs=0.03)
+        check.largest("enthalpy", h + (saturated - w) * water, h_s, "kJ/kg", within=0.03)
 
 
+@validates("Enhancement factor over water", checks.COOLPROP)
 @pytest.mark.parametrize("p", [60e3, 80e3, SEA_LEVEL, 106e3])
 @pytest.mark.parametrize("t", [0.01, 1.0, 10.0, 20.0, 30.0, 40.0, 50.0])
-def test_enhancement_factor_over_water(t: float, p: float) -> None:
+def test_enhancement_factor_over_water(t: float, p: float, check: Recorder) -> None:
     """Partial pressure of water in saturated air over its pure saturation pressure, both CoolProp's.
 
     Hardy's fit (from memory) and the real-gas formulation differ by 0.03 %, one part in twelve of f - 1.
@@ -144,12 +155,13 @@ def test_enhancement_factor_over_water(t: float, p: float) -> None:
     kelvin = t + 273.15
     partial = HAPropsSI("P_w", "T", kelvin + 1e-9, "R", 1.0, "P", p)
     expected = partial / PropsSI("P", "T", kelvin, "Q", 0, "Water")
-    assert moist_air.enhancement_factor(t, p) == pytest.approx(expected, abs=3e-4)
+    check.largest(f"{p / 1000.0:g} kPa", moist_air.enhancement_factor(t, p), expected, "1", within=3e-4)
 
 
+@validates("Enhancement factor over ice", checks.COOLPROP)
 @pytest.mark.parametrize("p", [60e3, 80e3, SEA_LEVEL, 106e3])
 @pytest.mark.parametrize("t", [-45.0, -30.0, -20.0, -10.0, -5.0, -0.1])
-def test_enhancement_factor_over_ice(t: float, p: float) -> None:
+def test_enhancement_factor_over_ice(t: float, p: float, check: Recorder) -> None:
     """The same over ice, with IAPWS R14-08 for the pure substance. Tolerance 0.09 %.
 
     Hardy's set over ice (from memory), less the 0.013 % by which the program joins it to the one over water,
@@ -158,24 +170,27 @@ def test_enhancement_factor_over_ice(t: float, p: float) -> None:
     """
     partial = HAPropsSI("P_w", "T", t + 273.15, "R", 1.0, "P", p)
     expected = partial / water_reference.sublimation_pressure(t)
-    assert moist_air.enhancement_factor(t, p) == pytest.approx(expected, abs=9e-4)
+    check.largest(f"{p / 1000.0:g} kPa", moist_air.enhancement_factor(t, p), expected, "1", within=9e-4)
 
 
+@validates("Saturation humidity ratio over ice and water", checks.COOLPROP)
 @pytest.mark.parametrize("p", [60e3, 80e3, SEA_LEVEL, 106e3])
-def test_saturation_over_ice_and_water(p: float) -> None:
+def test_saturation_over_ice_and_water(p: float, check: Recorder) -> None:
     """Factor times pressure, as humidity ratio: within 0.04 % of CoolProp from -30 degC up, 0.05 % below."""
     t = np.arange(-45.0, 60.1, 0.5)
     expected = humid_air("W", t, "R", 1.0, p)
-    error = np.abs(moist_air.saturation_humidity_ratio(t, p) / expected - 1.0)
-    assert error[t >= -30.0].max() < 4e-4
-    assert error.max() < 5e-4
+    found = moist_air.saturation_humidity_ratio(t, p)
+    usual = t >= -30.0
+    check.largest("-30..60 degC", found[usual], expected[usual], "kg/kg", rel=4e-4)
+    check.largest("-45..60 degC", found, expected, "kg/kg", rel=5e-4)
 
 
-def test_liquid_water() -> None:
-    """Within 0.004 kJ/kg of IAPWS-95 (CoolProp) over 0.01..60 degC, as declared."""
+@validates("Enthalpy of liquid water, the fit", checks.COOLPROP)
+def test_liquid_water(check: Recorder) -> None:
+    """Within 0.004 kJ/kg of IAPWS-95 over 0.01..60 degC, as declared."""
     t = np.linspace(0.01, 60.0, 241)
     expected = np.asarray(PropsSI("H", "T", t + 273.15, "Q", 0, "Water")) / 1000.0
-    np.testing.assert_allclose(moist_air.liquid_water_enthalpy(t), expected, rtol=0.0, atol=0.004)
+    check.largest("0.01..60 degC", moist_air.liquid_water_enthalpy(t), expected, "kJ/kg", within=0.004)
 
 
 @pytest.fixture(scope="module")
@@ -185,28 +200,32 @@ def metric() -> None:
 
 
 @pytest.mark.usefixtures("metric")
+@validates("Saturation pressure is Hyland and Wexler's", checks.PSYCHROLIB)
 @pytest.mark.parametrize("t", [-60.0, -30.0, -5.0, 0.0, 0.02, 10.0, 35.0, 60.0])
-def test_saturation_pressure_is_hyland_and_wexler(t: float) -> None:
+def test_saturation_pressure_is_hyland_and_wexler(t: float, check: Recorder) -> None:
     """psychrolib holds the same two equations: every coefficient agrees, to rounding."""
-    assert moist_air.saturation_pressure(t) == pytest.approx(psychrolib.GetSatVapPres(t), rel=1e-12)
+    expected = psychrolib.GetSatVapPres(t)
+    check.largest("-60..60 degC", moist_air.saturation_pressure(t), expected, "Pa", rel=1e-12)
 
 
 @pytest.mark.usefixtures("metric")
-def test_perfect_gas_is_too_coarse() -> None:
-    """Without the enhancement factor (psychrolib) W is 0.42 % low at 10 degC and 0.62 % at 50 degC.
+@validates("Why the perfect gas is too coarse", checks.APART)
+def test_perfect_gas_is_too_coarse(check: Recorder) -> None:
+    """By how much psychrolib's saturated humidity ratio, without the enhancement factor, is low.
 
     Figures computed with CoolProp, a cross-check; 0.05 %, the accuracy of the program's own.
     """
-    for t, low in ((10.0, 0.0042), (50.0, 0.0062)):
+    for t, low in ((10.0, 0.42), (50.0, 0.62)):
         perfect = psychrolib.GetSatHumRatio(t, SEA_LEVEL)
         found = 1.0 - perfect / moist_air.saturation_humidity_ratio(t, SEA_LEVEL)
-        assert found == pytest.approx(low, abs=5e-4)
+        check(f"{t:g} degC", 100.0 * found, low, "% of W", within=0.05)
 
 
 @pytest.mark.usefixtures("metric")
+@validates("Wet bulb and dew point by perfect-gas formulas", checks.PSYCHROLIB)
 @pytest.mark.parametrize("t", [-15.0, 5.0, 20.0, 35.0, 45.0])
 @pytest.mark.parametrize("rh", [0.2, 0.6, 0.95])
-def test_wet_bulb_by_perfect_gas(t: float, rh: float) -> None:
+def test_wet_bulb_by_perfect_gas(t: float, rh: float, check: Recorder) -> None:
     """psychrolib's wet bulb at the same relative humidity: within 0.03 K, dew point within 0.02 K.
 
     At equal relative humidity the enhancement factor acts on both sides and nearly cancels: what remains is
@@ -214,14 +233,15 @@ def test_wet_bulb_by_perfect_gas(t: float, rh: float) -> None:
     """
     w = moist_air.humidity_ratio_from_relative_humidity(t, rh, SEA_LEVEL)
     wet_bulb = psychrolib.GetTWetBulbFromRelHum(t, rh, SEA_LEVEL)
-    assert moist_air.wet_bulb(t, w, SEA_LEVEL) == pytest.approx(wet_bulb, abs=0.03)
+    check.largest("wet bulb", moist_air.wet_bulb(t, w, SEA_LEVEL), wet_bulb, "K", within=0.03)
     dew_point = psychrolib.GetTDewPointFromRelHum(t, rh)
-    assert moist_air.dew_point(w, SEA_LEVEL) == pytest.approx(dew_point, abs=0.02)
+    check.largest("dew point", moist_air.dew_point(w, SEA_LEVEL), dew_point, "K", within=0.02)
 
 
 @pytest.mark.usefixtures("metric")
+@validates("Standard atmosphere by another form of its equation", checks.PSYCHROLIB)
 @pytest.mark.parametrize("elevation", [-500.0, 0.0, 1600.0, 4000.0])
-def test_standard_atmosphere(elevation: float) -> None:
+def test_standard_atmosphere(elevation: float, check: Recorder) -> None:
     """psychrolib's form of the same equation, to the digits of its exponent."""
     expected = psychrolib.GetStandardAtmPressure(elevation)
-    assert moist_air.standard_atmosphere(elevation) == pytest.approx(expected, rel=1e-6)
+    check.largest("-500..4000 m", moist_air.standard_atmosphere(elevation), expected, "Pa", rel=1e-6)

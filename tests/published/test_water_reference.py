@@ -4,9 +4,12 @@ from __future__ import annotations
 
 import pytest
 from CoolProp.CoolProp import PropsSI
+from published import checks
 from published import water_reference as reference
+from published.checks import Recorder, validates
 
 
+@validates("Ice, as the tests compute it", checks.ICE)
 @pytest.mark.parametrize(
     ("kelvin", "p", "gibbs", "enthalpy", "entropy"),
     [
@@ -15,24 +18,27 @@ from published import water_reference as reference
         (100.0, 100e6, -222296.513088, -483491.635676, -2611.95122589),
     ],
 )
-def test_ice(kelvin: float, p: float, gibbs: float, enthalpy: float, entropy: float) -> None:
-    """IAPWS R10-06 (2009), table 6, all twelve digits; at the triple point g is a difference of two numbers
+def test_ice(kelvin: float, p: float, gibbs: float, enthalpy: float, entropy: float, check: Recorder) -> None:
+    """Table 6 of the release, all twelve digits; at the triple point g is a difference of two numbers
     near 333 kJ/kg, which costs it digits."""
     assert reference.ice_gibbs(kelvin, p) == pytest.approx(gibbs, rel=1e-11, abs=1e-8)
     found = reference.ice_gibbs(kelvin, p) + kelvin * reference.ice_entropy(kelvin, p)
-    assert found == pytest.approx(enthalpy, rel=1e-11)
-    assert reference.ice_entropy(kelvin, p) == pytest.approx(entropy, rel=1e-11)
+    state = f"{kelvin:g} K, {p:g} Pa"
+    check(f"enthalpy, {state}", found, enthalpy, "J/kg", rel=1e-11)
+    check(f"entropy, {state}", reference.ice_entropy(kelvin, p), entropy, "J/(kg K)", rel=1e-11)
 
 
-def test_sublimation_pressure() -> None:
-    """IAPWS R14-08 (2011), section 5: 8.94735 Pa at 230 K, to the digits printed."""
-    assert reference.sublimation_pressure(230.0 - 273.15) == pytest.approx(8.94735, abs=5e-6)
+@validates("Sublimation pressure, as the tests compute it", checks.SUBLIMATION)
+def test_sublimation_pressure(check: Recorder) -> None:
+    """Section 5 of the release, to the digits printed."""
+    check("230 K", reference.sublimation_pressure(230.0 - 273.15), 8.94735, "Pa", within=5e-6)
 
 
-def test_ice_and_liquid_meet_at_the_triple_point() -> None:
+@validates("Ice and liquid meet at the triple point", checks.COOLPROP)
+def test_ice_and_liquid_meet_at_the_triple_point(check: Recorder) -> None:
     """Vapour over ice equals vapour over liquid there; CoolProp (IAPWS-95) supplies the liquid.
 
     Its triple-point pressure is 611.655 Pa against 611.657 Pa here, hence 1e-5.
     """
     liquid = PropsSI("P", "T", 273.16, "Q", 0, "Water")
-    assert reference.sublimation_pressure(0.01) == pytest.approx(liquid, rel=1e-5)
+    check("vapour pressure", reference.sublimation_pressure(0.01), liquid, "Pa", rel=1e-5)

@@ -12,6 +12,8 @@ from pathlib import Path
 
 import numpy as np
 import pytest
+from published import checks
+from published.checks import Recorder, validates
 
 from estimator.errors import WeatherError
 from estimator.weather import WeatherOptions, WeatherYear, read_weather, summarise
@@ -62,8 +64,10 @@ def find(year: WeatherYear, words: str):
     return [f for f in year.findings if words in f.what]
 
 
+@validates("TMY3 values are those of the file", checks.FILE_TEXT)
 @pytest.mark.parametrize("path", TMY3, ids=lambda p: p.name)
-def test_tmy3_values_are_those_of_the_text(path):
+def test_tmy3_values_are_those_of_the_text(path: Path, check: Recorder):
+    """Every hour of every column, under the right month and hour."""
     text, year = text_of_tmy3(path), read_weather(path, PLAIN)
     assert year.format == "TMY3"
     assert year.hours == 8760
@@ -71,11 +75,14 @@ def test_tmy3_values_are_those_of_the_text(path):
     assert year.source_years == years_by_month(text["month"], text["year"])
     np.testing.assert_array_equal(year.month, text["month"])
     np.testing.assert_array_equal(year.hour, np.tile(np.arange(24), 365))
-    np.testing.assert_array_equal(year.dry_bulb, text["Dry-bulb (C)"])
-    np.testing.assert_array_equal(year.dew_point, text["Dew-point (C)"])
-    np.testing.assert_array_equal(year.pressure, 100.0 * text["Pressure (mbar)"])
-    np.testing.assert_array_equal(year.global_horizontal, text["GHI (W/m^2)"])
-    np.testing.assert_array_equal(year.wind_speed, text["Wspd (m/s)"])
+    for name, values, written, unit in (
+        ("dry bulb", year.dry_bulb, text["Dry-bulb (C)"], "K"),
+        ("dew point", year.dew_point, text["Dew-point (C)"], "K"),
+        ("pressure", year.pressure, 100.0 * text["Pressure (mbar)"], "Pa"),
+        ("radiation", year.global_horizontal, text["GHI (W/m^2)"], "W/m2"),
+        ("wind", year.wind_speed, text["Wspd (m/s)"], "m/s"),
+    ):
+        check.largest(f"{path.name}, {name}", values, written, unit, within=0.0)
     assert year.repairs == ()
     assert find(year, "culminates") == []
 
@@ -95,7 +102,9 @@ def test_tmy3_values_are_those_of_pvlib_one_label_earlier():
     assert year.elevation == meta["altitude"]
 
 
-def test_tmy2_values_are_those_of_the_text():
+@validates("TMY2 values are those of the file", checks.FILE_TEXT)
+def test_tmy2_values_are_those_of_the_text(check: Recorder):
+    """Every hour of every column, under the right month and hour, to rounding."""
     lines = TMY2.read_text().splitlines()[1:]
     year = read_weather(TMY2, PLAIN)
     assert year.format == "TMY2"
@@ -104,18 +113,16 @@ def test_tmy2_values_are_those_of_the_text():
     # 25 degrees 48 minutes north, 80 degrees 16 minutes west
     assert year.latitude == pytest.approx(25.8)
     assert year.longitude == pytest.approx(-80.26667, abs=1e-5)
-    for values, (a, b), factor in (
-        (year.dry_bulb, (67, 71), 10),
-        (year.dew_point, (73, 77), 10),
-        (year.pressure, (84, 88), 0.01),
-        (year.global_horizontal, (17, 21), 1),
-        (year.wind_speed, (95, 98), 10),
-        (year.hour, (7, 9), 1),
+    for name, values, (a, b), factor, unit in (
+        ("dry bulb", year.dry_bulb, (67, 71), 10, "K"),
+        ("dew point", year.dew_point, (73, 77), 10, "K"),
+        ("pressure", year.pressure, (84, 88), 0.01, "Pa"),
+        ("radiation", year.global_horizontal, (17, 21), 1, "W/m2"),
+        ("wind", year.wind_speed, (95, 98), 10, "m/s"),
+        ("hour, by its end", year.hour + 1, (7, 9), 1, "h"),
     ):
         written = np.array([float(line[a:b]) for line in lines])
-        if values is year.hour:
-            written -= 1
-        np.testing.assert_allclose(values, written / factor, rtol=1e-15)
+        check.largest(f"{TMY2.name}, {name}", values, written / factor, unit, rel=1e-15)
     months = np.array([int(line[3:5]) for line in lines])
     years = 1900 + np.array([int(line[1:3]) for line in lines])
     assert year.source_years == years_by_month(months, years)
@@ -171,43 +178,49 @@ def test_the_sun_of_real_files_keeps_their_time_zone(path):
         assert float(told.what.split("culminates ")[1].split(" h")[0]) == pytest.approx(1.0, abs=0.15)
 
 
-def test_design_values_of_a_humid_site():
-    """The TMY2 station's 0.4 % dew point is 25.8 degC with 28.9 degC dry bulb, its 0.4 % dry bulb 33.2 degC.
-
-    ASHRAE Handbook Fundamentals, climatic design information of a long record, from memory, rounded; one
-    older typical year is within 1.5 K of it.
+@validates("Design values of a humid site", checks.DESIGN)
+def test_design_values_of_a_humid_site(check: Recorder):
+    """Those of Miami, from a long record; one older typical year is within 1.5 K of it, its hottest hours,
+    which a typical year leaves out, within 1.6 K.
     """
     design = {c.name: c for c in summarise(read_weather(TMY2, PLAIN)).design}
-    assert design["dew point 0.4 %"].dew_point == pytest.approx(25.8, abs=1.5)
-    assert design["dew point 0.4 %"].dry_bulb == pytest.approx(28.9, abs=1.5)
-    assert design["dry bulb 0.4 %"].dry_bulb == pytest.approx(33.2, abs=1.6)
+    check("dew point exceeded in 0.4 %", design["dew point 0.4 %"].dew_point, 25.8, "degC", within=1.5)
+    check("dry bulb with it", design["dew point 0.4 %"].dry_bulb, 28.9, "degC", within=1.5)
+    check("dry bulb exceeded in 0.4 %", design["dry bulb 0.4 %"].dry_bulb, 33.2, "degC", within=1.6)
 
 
-def test_equation_of_time():
-    """Extremes in minutes from almanacs, from memory; half a minute for the cycle of leap years."""
-    day = np.array([42.0, 134.0, 207.0, 307.0])  # 11 February, 14 May, 26 July, 3 November
-    np.testing.assert_allclose(60 * equation_of_time(day), [-14.2, 3.7, -6.5, 16.4], atol=0.5)
+@validates("Equation of time", checks.ALMANAC)
+def test_equation_of_time(check: Recorder):
+    """Its extremes; half a minute for the cycle of leap years."""
+    for date, day, minutes in (
+        ("11 February", 42.0, -14.2),
+        ("14 May", 134.0, 3.7),
+        ("26 July", 207.0, -6.5),
+        ("3 November", 307.0, 16.4),
+    ):
+        check(date, 60 * equation_of_time(np.array([day]))[0], minutes, "min", within=0.5)
 
 
-def test_relative_humidity_over_water_and_over_ice():
-    """Saturation in hPa, Smithsonian tables (Goff and Gratch), from memory: -10 degC 2.863 and 2.597,
-    -20 degC 1.254 and 1.032, over water and ice; 0.5 % for the formula."""
+@validates("Relative humidity over water and over ice", checks.SMITHSONIAN)
+def test_relative_humidity_over_water_and_over_ice(check: Recorder):
+    """At -10 degC with a dew point of -20 degC. Saturation in hPa at -10 degC 2.863 and 2.597, at -20 degC
+    1.254 and 1.032, over water and over ice; 0.5 % for the formula.
+    """
     t, dew = np.array([-10.0]), np.array([-20.0])
-    assert relative_humidity_from_dew_point(t, dew, "water")[0] == pytest.approx(
-        100 * 1.254 / 2.863, rel=0.005
-    )
-    assert relative_humidity_from_dew_point(t, dew, "ice")[0] == pytest.approx(100 * 1.032 / 2.597, rel=0.005)
+    over_water, over_ice = (relative_humidity_from_dew_point(t, dew, phase)[0] for phase in ("water", "ice"))
+    check("over water", over_water, 100 * 1.254 / 2.863, "%", rel=0.005)
+    check("over ice", over_ice, 100 * 1.032 / 2.597, "%", rel=0.005)
     assert better_phase(np.full(30, -10.0), np.full(30, -20.0), np.full(30, 43.8)) == "water"
     assert better_phase(np.full(30, -10.0), np.full(30, -20.0), np.full(30, 39.7)) == "ice"
 
 
-def test_dew_point_from_relative_humidity():
-    """25 degC at 50 %: half of 3.1697 kPa, between 1.4979 kPa at 13 and 1.5987 kPa at 14 degC.
-
-    ASHRAE Handbook Fundamentals 2021, ch. 1, table 3, from memory. The enhancement factor cancels to 0.01 K.
+@validates("Dew point from relative humidity", checks.TABLE_3_MEMORY)
+def test_dew_point_from_relative_humidity(check: Recorder):
+    """25 degC at 50 %: half of 3.1697 kPa, between 1.4979 kPa at 13 and 1.5987 kPa at 14 degC. The
+    enhancement factor cancels to 0.01 K, as much again for the straight line between the rows.
     """
     dew = dew_point_from_relative_humidity(np.array([25.0]), np.array([50.0]), np.array([101_325.0]), "water")
-    assert dew[0] == pytest.approx(13.0 + (1.58485 - 1.4979) / (1.5987 - 1.4979), abs=0.02)
+    check("25 degC, 50 %", dew[0], 13.0 + (1.58485 - 1.4979) / (1.5987 - 1.4979), "degC", within=0.02)
 
 
 # --- real files, where they are at hand ---------------------------------------------------------------------
