@@ -1,20 +1,12 @@
-"""States as a psychrometric chart is read, by dry and wet bulb, at sea level unless said."""
+"""States as a psychrometric chart is read, at sea level, from the program's moist-air functions."""
 
 from __future__ import annotations
 
 from typing import NamedTuple
 
-from scipy.optimize import brentq
-
 from estimator import moist_air
 
 SEA_LEVEL = 101_325.0
-
-
-def humidity_ratio_from_wet_bulb(t: float, wet_bulb: float, p: float = SEA_LEVEL) -> float:
-    """Humidity ratio, kg/kg, of air of this dry and wet bulb, searched for, not by the program itself."""
-    saturated = float(moist_air.saturation_humidity_ratio(wet_bulb, p))
-    return float(brentq(lambda w: float(moist_air.wet_bulb(t, w, p)) - wet_bulb, 0.0, saturated))
 
 
 class Air(NamedTuple):
@@ -39,7 +31,7 @@ class Air(NamedTuple):
     @classmethod
     def wet(cls, t: float, wet_bulb: float) -> Air:
         """From dry and wet bulb."""
-        return cls.of(t, humidity_ratio_from_wet_bulb(t, wet_bulb))
+        return cls.of(t, float(moist_air.humidity_ratio_from_wet_bulb(t, wet_bulb, SEA_LEVEL)))
 
     @classmethod
     def from_enthalpy(cls, h: float, w: float) -> Air:

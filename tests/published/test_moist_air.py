@@ -11,7 +11,7 @@ from __future__ import annotations
 import numpy as np
 import pytest
 from published import checks, water_reference
-from published.chart import SEA_LEVEL, humidity_ratio_from_wet_bulb
+from published.chart import SEA_LEVEL
 from published.checks import Recorder, validates
 
 from estimator import moist_air
@@ -175,7 +175,7 @@ def test_chart_states(
     Tolerance: half a graduation of the chart, 0.5 kJ/kg and 0.1 g/kg; volume 0.2 %, its last digit and the
     perfect gas.
     """
-    w = humidity_ratio_from_wet_bulb(40.0, 30.0, p)
+    w = moist_air.humidity_ratio_from_wet_bulb(40.0, 30.0, p)
     check(f"humidity ratio, {place}", 1000.0 * w, grams, "g/kg", within=0.1)
     check(f"enthalpy, {place}", moist_air.enthalpy(40.0, w, p), enthalpy, "kJ/kg", within=0.5)
     check(f"specific volume, {place}", moist_air.specific_volume(40.0, w, p), volume, "m3/kg", rel=2e-3)
@@ -188,7 +188,7 @@ def test_worked_state(check: Recorder) -> None:
     Tolerances are those of the reading: 0.1 g/kg, 0.3 kJ/kg, 0.6 K of dew point (the chart's curves are
     steep there), 0.5 points of relative humidity, 0.001 m3/kg.
     """
-    w = humidity_ratio_from_wet_bulb(40.0, 20.0, SEA_LEVEL)
+    w = moist_air.humidity_ratio_from_wet_bulb(40.0, 20.0, SEA_LEVEL)
     check("humidity ratio", 1000.0 * w, 6.5, "g/kg", within=0.1)
     check("enthalpy", moist_air.enthalpy(40.0, w, SEA_LEVEL), 56.7, "kJ/kg", within=0.3)
     check("dew point", moist_air.dew_point(w, SEA_LEVEL), 7.0, "degC", within=0.6)

@@ -125,6 +125,22 @@ def test_wet_bulb(grid: Grid, check: Recorder) -> None:
     check.largest("wet bulb", found[same], expected[same], "K", within=0.01)
 
 
+@validates("Humidity ratio from wet bulb over the claimed range", checks.COOLPROP)
+def test_humidity_ratio_from_wet_bulb(grid: Grid, check: Recorder) -> None:
+    """CoolProp's wet bulbs, over ice and over water, back to the humidity ratio they belong to.
+
+    Over water 0.05 % of what the air can hold, the claim. Over ice, where that is little, 0.006 g/kg: 0.04 %
+    of 4 g/kg at the wet bulb, and the enthalpy fit at both ends, 0.0075 kJ/kg each over 2830 kJ/kg.
+    """
+    wet_bulb = humid_air("B", grid.t, "W", grid.w, grid.p) - 273.15
+    found = moist_air.humidity_ratio_from_wet_bulb(grid.t, wet_bulb, grid.p)
+    ice = wet_bulb < 0.01
+    most = humid_air("W", grid.t, "R", 1.0, grid.p)
+    share, expected = found / most, grid.w / most
+    check.largest("over water, share of saturation", share[~ice], expected[~ice], "1", within=5e-4)
+    check.largest("over ice", 1000.0 * found[ice], 1000.0 * grid.w[ice], "g/kg", within=6e-3)
+
+
 @validates("Wet bulb where two solutions exist", checks.COOLPROP)
 def test_wet_bulb_where_two_solutions_exist(grid: Grid, check: Recorder) -> None:
     """The program's wet bulb over water satisfies its definition with CoolProp's properties.
