@@ -4,12 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
-from typing import Any
+from typing import Any, Literal, TypeAlias
 
 import numpy as np
 
 from estimator import moist_air
-from estimator.airstream.airflow import mass_flow
+from estimator.airstream.airflow import fraction, mass_flow
 from estimator.airstream.fan import FanDevice
 from estimator.airstream.order import Passage
 from estimator.airstream.state import Hours, State
@@ -18,7 +18,28 @@ from estimator.scheme import Scheme
 from estimator.settings import Setpoint
 from estimator.year import Mode, Year, run_hours
 
-__all__ = ["HourExchange", "HourResult", "OutdoorAir", "StatePoint", "follows_calendar", "run_hour"]
+__all__ = [
+    "CoilWork",
+    "Governing",
+    "HourEnergy",
+    "HourExchange",
+    "HourResult",
+    "OutdoorAir",
+    "Reason",
+    "StatePoint",
+    "Targets",
+    "follows_calendar",
+    "run_hour",
+]
+
+#: What fixes the coil's leaving air.
+Governing: TypeAlias = Literal[
+    "dew point", "dry bulb", "least surface temperature", "total cooling capacity", "lockout", "off"
+]
+#: Why a target is missed.
+Reason: TypeAlias = Literal[
+    "least surface temperature", "total cooling capacity", "lockout", "heating capacity", "no source of heat"
+]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -66,19 +87,61 @@ class HourExchange:
 
 
 @dataclass(frozen=True, kw_only=True)
+class Targets:
+    """What the supply air is asked for in this hour; a dry bulb is None where nothing is asked."""
+
+    dew_point_c: float
+    #: kg/kg: that of saturation at the dew point and the hour's pressure
+    humidity_ratio: float
+    dry_bulb_low_c: float | None
+    dry_bulb_high_c: float | None
+
+
+@dataclass(frozen=True, kw_only=True)
+class CoilWork:
+    """What the coil does and what it follows.
+
+    ``surface_c`` is the apparatus dew point of a coil that removes water, else the temperature of the dry
+    surface; None where the coil does nothing.
+    """
+
+    governed_by: Governing
+    surface_c: float | None
+    flags: Mapping[str, bool]
+
+
+@dataclass(frozen=True, kw_only=True)
+class HourEnergy:
+    """Bought energy of one carrier for one purpose; None where the scheme does not determine it."""
+
+    carrier: str
+    purpose: str
+    kw: float | None
+
+
+@dataclass(frozen=True, kw_only=True)
 class HourResult:
     """One hour of one scheme."""
 
     scheme: Scheme
     outdoor: OutdoorAir
+    targets: Targets
     mass_flow_kg_per_s: float
+    #: share of the full flow that the schedule asks for
+    flow_share: float
     state_points: tuple[StatePoint, ...]
     exchanges: tuple[HourExchange, ...]
     mode: Mode
     unmet: Mapping[str, bool]
+    #: why, for each target that is missed
+    unmet_because: Mapping[str, Reason]
+    coil: CoilWork
     sensible_kw: float
     latent_kw: float
     condensate_kg_per_h: float
+    #: heat that only brings the air back up to at most its outdoor dry bulb, by what supplied it
+    cooling_undone_kw: Mapping[str, float]
+    energy: tuple[HourEnergy, ...]
     electricity_kw: float | None
 
 
@@ -93,17 +156,31 @@ def run_hour(scheme: Scheme, outdoor: OutdoorAir) -> HourResult:
     hours = _hours(scheme, outdoor)
     year = run_hours(scheme, hours)
     points = {name: _point(name, state) for name, state in year.airstream.points.items()}
+    work = _coil_work(year)
     return HourResult(
         scheme=scheme,
         outdoor=outdoor,
+        targets=_targets(year),
         mass_flow_kg_per_s=_one(hours.mass_flow),
+        flow_share=_one(fraction(scheme.airflow, hours.month, hours.hour, hours.weekday)),
         state_points=tuple(points.values()),
         exchanges=tuple(_exchange(year, passage, points) for passage in year.airstream.passages),
         mode=Mode(int(year.mode[0])),
         unmet={name: bool(flag[0]) for name, flag in year.unmet.items()},
+        unmet_because={name: _reason(name, work, scheme) for name, flag in year.unmet.items() if flag[0]},
+        coil=work,
         sensible_kw=_one(year.coil_sensible),
         latent_kw=_one(year.coil_latent),
         condensate_kg_per_h=_one(year.condensate),
+        cooling_undone_kw={kind: _one(heat) for kind, heat in year.cooling_undone_by.items()},
+        energy=tuple(
+            HourEnergy(
+                carrier=row.carrier,
+                purpose=row.purpose,
+                kw=None if row.power is None else _one(row.power),
+            )
+            for row in year.energy
+        ),
         electricity_kw=_electricity(year),
     )
 
@@ -120,6 +197,65 @@ def _electricity(year: Year) -> float | None:
                 return None
             total += _one(row.power)
     return total
+
+
+def _targets(year: Year) -> Targets:
+    wanted = year.airstream.request
+    return Targets(
+        dew_point_c=_one(wanted.dew_point),
+        humidity_ratio=_one(wanted.humidity_ratio),
+        dry_bulb_low_c=None if wanted.low is None else _one(wanted.low),
+        dry_bulb_high_c=None if wanted.high is None else _one(wanted.high),
+    )
+
+
+def _coil_work(year: Year) -> CoilWork:
+    passage = next(p for p in year.airstream.passages if p.exchange.kind == "coil")
+    entering, leaving = (year.airstream.points[name] for name in (passage.entering, passage.leaving))
+    flags = {name: bool(flag[0]) for name, flag in year.coil_flags.items()}
+    cools = bool(year.cooling[0])
+    w1, w2, w_set = (
+        _one(w) for w in (entering.humidity_ratio, leaving.humidity_ratio, _targets(year).humidity_ratio)
+    )
+    governed: Governing = "dry bulb" if cools else "off"
+    if flags["locked out"]:
+        governed = "lockout"
+    elif flags["at capacity"]:
+        governed = "total cooling capacity"
+    elif flags["at least surface temperature"]:
+        governed = "least surface temperature"
+    elif w1 > w_set and bool(year.hours.running[0]):
+        if not cools:
+            # even its coldest surface takes no water from this air
+            governed = "least surface temperature"
+        elif abs(w2 - w_set) <= 1e-9 * w_set:
+            governed = "dew point"
+    return CoilWork(
+        governed_by=governed,
+        surface_c=_surface(year, entering, leaving, governed) if cools else None,
+        flags=flags,
+    )
+
+
+def _surface(year: Year, entering: State, leaving: State, governed: Governing) -> float:
+    coil = year.scheme.coil
+    if governed == "least surface temperature":
+        return min(coil.least_surface_temperature, _one(entering.dry_bulb))
+    wet = _one(year.apparatus_dew_point())
+    if np.isfinite(wet):
+        return wet
+    bf = coil.bypass_factor
+    h = (_one(leaving.enthalpy) - bf * _one(entering.enthalpy)) / (1.0 - bf)
+    return _one(entering.mixture.dry_bulb(h))
+
+
+def _reason(target: str, work: CoilWork, scheme: Scheme) -> Reason:
+    if target == "cold":
+        return "heating capacity" if scheme.reheat else "no source of heat"
+    if work.governed_by in ("lockout", "total cooling capacity"):
+        return "lockout" if work.governed_by == "lockout" else "total cooling capacity"
+    # nothing else keeps a coil from its target
+    return "least surface temperature"
 
 
 def follows_calendar(scheme: Scheme) -> bool:

@@ -17,7 +17,7 @@ from estimator.totals import SeasonMap, Totals, sum_year
 from estimator.weather.model import WeatherYear
 from estimator.year import Year, run_year
 
-__all__ = ["NOT_MODELLED", "YearResult", "evaluate"]
+__all__ = ["ESTIMATE", "NOT_MODELLED", "SYNTHETIC", "YearResult", "evaluate"]
 
 
 #: Said in every output that it touches.
@@ -26,6 +26,13 @@ NOT_MODELLED: Final = (
     "runs, duct gains and control dead bands are not modelled.",
     "Condensate leaves at the coil's leaving dry bulb, by convention. Station pressure holds throughout the "
     "unit: the fan's own pressure is left out of the air's state.",
+)
+
+
+SYNTHETIC: Final = "The weather is synthetic: made up for demonstration, of no real place."
+ESTIMATE: Final = (
+    "An estimate for comparison. Local codes, the authority having jurisdiction and a licensed "
+    "practitioner decide."
 )
 
 
@@ -115,7 +122,7 @@ def _cautions(year: Year, sums: Totals) -> tuple[str, ...]:
     weather, scheme = year.weather, year.scheme
     cautions = []
     if weather is not None and weather.synthetic:
-        cautions.append("The weather is synthetic: made up for demonstration, of no real place.")
+        cautions.append(SYNTHETIC)
     if weather is not None and weather.calendar == "typical":
         cautions.append(
             "A typical year leaves out extremes: its peaks must not size equipment. "
@@ -145,8 +152,5 @@ def _cautions(year: Year, sums: Totals) -> tuple[str, ...]:
         scheme.preheat is not None and scheme.preheat.source == "electric"
     ):
         cautions.append("Electric heaters need airflow proving and over-temperature cut-outs.")
-    cautions.append(
-        "An estimate for comparison. Local codes, the authority having jurisdiction and a licensed "
-        "practitioner decide."
-    )
+    cautions.append(ESTIMATE)
     return tuple(cautions)

@@ -160,12 +160,13 @@ def _humidity(text: str, dry_bulb: float, pressure: float) -> float:
                 allowed=f"at most {dry_bulb:g} degC",
             )
         if name == "wet bulb":
-            return _from_wet_bulb(value, dry_bulb, pressure)
-        return float(moist_air.saturation_humidity_ratio(value, pressure))
+            return _from_wet_bulb(text, value, dry_bulb, pressure)
+        return _plausible(text, float(moist_air.saturation_humidity_ratio(value, pressure)))
     unit = _unit_of(text)
     if unit in ("%", "percent"):
         share = parse_value(text, QUANTITIES["relative humidity"], where=where)
-        return float(moist_air.humidity_ratio_from_relative_humidity(dry_bulb, share, pressure))
+        w = float(moist_air.humidity_ratio_from_relative_humidity(dry_bulb, share, pressure))
+        return _plausible(text, w)
     if unit in ("g/kg", "kg/kg", "gr/lb"):
         return parse_value(text, QUANTITIES["humidity ratio"], where=where)
     raise InputError(
@@ -175,7 +176,21 @@ def _humidity(text: str, dry_bulb: float, pressure: float) -> float:
     )
 
 
-def _from_wet_bulb(wet_bulb: float, dry_bulb: float, pressure: float) -> float:
+def _plausible(text: str, w: float) -> float:
+    """The humidity ratio ``w`` that ``text`` means, unless it is more than any outdoor air has."""
+    from estimator.quantities import QUANTITIES
+
+    quantity = QUANTITIES["humidity ratio"]
+    if w > quantity.most:
+        raise InputError(
+            f"{text!r} means {quantity.show(w)} in this air, more than any outdoor air has",
+            where="--air, humidity",
+            allowed=f"at most {quantity.show(quantity.most, decimals=0)}",
+        )
+    return w
+
+
+def _from_wet_bulb(text: str, wet_bulb: float, dry_bulb: float, pressure: float) -> float:
     from estimator import moist_air
 
     w = float(moist_air.humidity_ratio_from_wet_bulb(dry_bulb, wet_bulb, pressure))
@@ -186,6 +201,7 @@ def _from_wet_bulb(wet_bulb: float, dry_bulb: float, pressure: float) -> float:
             where="--air, humidity",
             allowed=f"{driest:.2f} to {dry_bulb:g} degC at this pressure",
         )
+    _plausible(text, w)
     again = float(moist_air.wet_bulb(dry_bulb, w, pressure))
     if abs(again - wet_bulb) > 1e-4:
         # close below 0 degC the same air has a wet bulb over ice and another over water

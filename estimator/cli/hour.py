@@ -125,7 +125,7 @@ def hour(
     if json != CONSOLE and not quiet:
         from estimator.report.hour import hour_page
 
-        say(hour_page(result, system))
+        say(hour_page(result, system, weather))
         if scheme is None:
             from estimator.report.assumed import assumed_page
 

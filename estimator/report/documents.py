@@ -12,6 +12,7 @@ import numpy as np
 from estimator import __version__
 from estimator.calendar_words import DAYS
 from estimator.hour import HourResult
+from estimator.report.hour import hour_cautions, hour_notes
 from estimator.report.weather import first_weekday
 from estimator.result import YearResult
 from estimator.scheme import Scheme, leaves, plain, resolved_sha256
@@ -180,7 +181,7 @@ def outdoor_at(weather: WeatherYear, label: str) -> dict[str, float]:
 
 
 def hour_document(result: HourResult, weather: WeatherYear | None = None) -> dict[str, Any]:
-    """One hour: state points, exchanges with the numbers that went into each, mode, targets missed."""
+    """One hour: targets, state points, exchanges with what went into each, mode, what is missed and why."""
     outdoor = result.outdoor
     return {
         **_head(),
@@ -192,7 +193,9 @@ def hour_document(result: HourResult, weather: WeatherYear | None = None) -> dic
             "humidity_ratio": outdoor.humidity_ratio,
             "pressure_pa": outdoor.pressure,
         },
+        "targets": dataclasses.asdict(result.targets),
         "mass_flow_kg_per_s": result.mass_flow_kg_per_s,
+        "flow_share": result.flow_share,
         "state_points": [dataclasses.asdict(point) for point in result.state_points],
         "exchanges": [
             {
@@ -209,10 +212,22 @@ def hour_document(result: HourResult, weather: WeatherYear | None = None) -> dic
         ],
         "mode": result.mode.words,
         "unmet": dict(result.unmet),
+        "unmet_because": {target: result.unmet_because.get(target) for target in result.unmet},
+        "coil": {
+            "governed_by": result.coil.governed_by,
+            "surface_c": result.coil.surface_c,
+            **{name.replace(" ", "_"): flag for name, flag in result.coil.flags.items()},
+        },
         "coil_sensible_kw": result.sensible_kw,
         "coil_latent_kw": result.latent_kw,
         "condensate_kg_per_h": result.condensate_kg_per_h,
+        "cooling_undone_kw": sum(result.cooling_undone_kw.values()),
+        "cooling_undone_by_fan_kw": result.cooling_undone_kw.get("fan", 0.0),
+        "cooling_undone_by_purchased_kw": result.cooling_undone_kw.get("purchased", 0.0),
+        "energy": [dataclasses.asdict(row) for row in result.energy],
         "electricity_kw": result.electricity_kw,
+        "notes": list(hour_notes(result)),
+        "cautions": list(hour_cautions(result, weather)),
     }
 
 

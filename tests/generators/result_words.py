@@ -160,6 +160,31 @@ HOUR: Final[Mapping[str, str]] = {
     "coil_latent_kw": "latent part",
     "condensate_kg_per_h": "water that leaves the coil",
     "electricity_kw": f"all bought electricity; {_NO_COP}",
+    "targets.dew_point_c": "highest dew point asked for in this hour",
+    "targets.humidity_ratio": "humidity ratio of saturation at it and at the hour's pressure",
+    "targets.dry_bulb_low_c": "dry bulb that the supply is heated to; null where none is asked for",
+    "targets.dry_bulb_high_c": "dry bulb that the supply is cooled to; null where none is asked for",
+    "flow_share": "share of the full flow that the schedule asks for; 1 without a schedule",
+    "unmet_because.dew_point": "why: `least surface temperature`, `total cooling capacity` or `lockout`; "
+    "null where met",
+    "unmet_because.warm": "the same",
+    "unmet_because.cold": "why: `heating capacity` or `no source of heat`; null where met",
+    "coil.governed_by": "what fixes the coil's leaving air: `dew point`, `dry bulb`, "
+    "`least surface temperature`, `total cooling capacity`, `lockout` or `off`",
+    "coil.surface_c": "apparatus dew point, or the temperature of a dry surface; null where the coil does "
+    "nothing",
+    "coil.at_least_surface_temperature": "true where the surface is held at its least",
+    "coil.at_capacity": "true at the total cooling capacity",
+    "coil.frozen": "true where the condensate leaves as ice",
+    "coil.locked_out": "true where the coil is locked out",
+    "cooling_undone_kw": "heat that only brings the air back up to at most its outdoor dry bulb",
+    "cooling_undone_by_fan_kw": "its part from fan heat",
+    "cooling_undone_by_purchased_kw": "its part from bought heat",
+    "energy[].carrier": "`electricity`, `fuel` or `heat`",
+    "energy[].purpose": "what it is bought for",
+    "energy[].kw": f"bought in this hour; {_NO_COP}",
+    "notes[]": "what the figures rest on, in words",
+    "cautions[]": "what a reader must know before using them, in words",
 }
 
 INPUTS: Final[Mapping[str, str]] = {

@@ -21,9 +21,9 @@ _CHAPTERS: Final[Mapping[str, tuple[str, str]]] = {
     ),
     "test_moist_air_processes": (
         "Worked examples",
-        "Airstream processes, taken through the program's own devices; mixing and the room, for which there is "
-        "none, from the moist-air functions. Published answers were read off charts, which is what tolerances "
-        "of 1 % and more allow for.",
+        "Airstream processes, taken through the program's own devices; mixing and the room, for which there "
+        "is none, from the moist-air functions. Published answers were read off charts, which is what "
+        "tolerances of 1 % and more allow for.",
     ),
     "test_moist_air_against_coolprop": (
         "Moist air against other programs",
