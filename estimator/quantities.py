@@ -441,7 +441,10 @@ def _bounds(quantity: Quantity) -> str:
     unit = "" if quantity.unit == "1" else f" {quantity.unit}"
     if math.isinf(quantity.most):
         return f"at least {quantity.least:g}{unit}" if math.isfinite(quantity.least) else "a finite number"
-    return f"{quantity.least:g} to {quantity.most:g}{unit}"
+    bounds = f"{quantity.least:g} to {quantity.most:g}{unit}"
+    if quantity.unit == "1" and quantity.most <= 1.0:
+        bounds += f" ({100.0 * quantity.least:g} to {100.0 * quantity.most:g} %)"
+    return bounds
 
 
 def _to_si(number: float, unit: str, quantity: Quantity, where: str, shown: str) -> float:
