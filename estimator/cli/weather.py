@@ -85,6 +85,10 @@ def weather(
                 years.append((year, summarise(year)))
             except InputError as error:
                 failed[file] = error.message()
+                tell(failed[file])
+        if not years:
+            # leaving by an error keeps the document from being written
+            raise typer.Exit(2)
         if "--json" in streams:
             from estimator.report.documents import dumps, weather_document
 
@@ -93,8 +97,6 @@ def weather(
         from estimator.report.weather import weather_page
 
         say("\n\n".join(weather_page(year, summary, system) for year, summary in years))
-    for message in failed.values():
-        tell(message)
     if failed:
         raise typer.Exit(2)
 

@@ -161,3 +161,9 @@ def test_what_is_no_weather_file(refused, tmp_path, content, word):
     (tmp_path / "x.epw").write_bytes(content)
     assert word in refused("weather", "x.epw")
     assert "x.epw: " in refused("year", "x.epw", "--scheme", "starter", "--json", "y.json")
+
+
+@pytest.mark.parametrize("target", ["weather.json", "-"])
+def test_where_no_file_can_be_read_nothing_is_written(refused, tmp_path, target):
+    (tmp_path / "empty.epw").touch()
+    assert "is empty" in refused("weather", "empty.epw", "--json", target)
